@@ -1,0 +1,39 @@
+using System.Collections.Immutable;
+using BenchCheck.Core.Quantities;
+
+namespace BenchCheck.Core.Boards;
+
+/// <summary>A diode, an LED or, with a breakdown voltage, a zener.</summary>
+/// <param name="Drop">forward voltage at <see cref="ReferenceAmperes"/></param>
+/// <param name="Breakdown">reverse voltage at which a zener conducts; null for the other kinds</param>
+public sealed record Diode(PartKind Kind, string Designator, ImmutableArray<string> Nodes, Nominal Drop, Nominal? Breakdown = null)
+    : Part(Kind, Designator, Nodes)
+{
+    public static readonly PartKind Plain = new("diode", ["anode", "cathode"], "D");
+    public static readonly PartKind Led = new("led", ["anode", "cathode"], "D");
+    public static readonly PartKind Zener = new("zener", ["anode", "cathode"], "D");
+
+    /// <summary>Forward voltage of a silicon junction at 1 mA taken when none is stated: common practice, no source.</summary>
+    public static readonly Nominal UsualDrop = Nominal.Within(0.65, Tolerance.Absolute(0.12));
+
+    /// <summary>Forward voltage of an indicator LED of unstated colour: common practice, no source.</summary>
+    public static readonly Nominal UsualLedDrop = Nominal.Between(1.6, 3.4);
+
+    /// <summary>Current at which the forward voltage is stated: 1 mA for a silicon junction, 5 mA for an LED.</summary>
+    public double ReferenceAmperes { get; init; } = ReferenceEquals(Kind, Led) ? 5e-3 : 1e-3;
+
+    /// <summary>Emission coefficient of the junction law: 1 for silicon junctions, 2 for an LED (common practice, no source).</summary>
+    public double Ideality { get; init; } = ReferenceEquals(Kind, Led) ? 2 : 1;
+
+    public override ImmutableArray<PartParameter> Parameters => Breakdown is null
+        ? [new(ParameterKind.Drop, Drop)]
+        : [new(ParameterKind.Drop, Drop), new(ParameterKind.Breakdown, Breakdown)];
+
+    public override void Describe(PartElements elements, string? setting)
+    {
+        var one = Coefficient.Constant(1);
+        elements.Add(new Junction(0, 1, Coefficient.Of(0), default, one, -1, -1, ReferenceAmperes, Ideality, JunctionRole.Forward));
+        if (Breakdown is not null)
+            elements.Add(new Junction(1, 0, Coefficient.Of(1), default, one, -1, -1, ReferenceAmperes, 0, JunctionRole.Breakdown));
+    }
+}

@@ -1,0 +1,33 @@
+using BenchCheck.Core.Quantities;
+
+namespace BenchCheck.Core.Boards;
+
+/// <summary>What a number of a part is; the names are those of the result files.</summary>
+/// <param name="Name">trade name, as printed and as written in JSON</param>
+/// <param name="Unit">unit of the number</param>
+/// <param name="IsRatioScale">
+/// true when the number is positive and its uncertainty is a matter of proportion (a resistance, a gain): the fit then moves its logarithm
+/// </param>
+/// <param name="IsReported">
+/// false for a nuisance number that the fit must allow for but that no reading of this kind of board is taken to find (a reverse gain)
+/// </param>
+public sealed record ParameterKind(string Name, Unit Unit, bool IsRatioScale, bool IsReported = true)
+{
+    public static readonly ParameterKind Resistance = new("resistance", Unit.Ohm, true);
+    public static readonly ParameterKind Gain = new("gain", Unit.One, true);
+    public static readonly ParameterKind Drop = new("drop", Unit.Volt, false);
+    public static readonly ParameterKind Breakdown = new("breakdown", Unit.Volt, false);
+    public static readonly ParameterKind Voltage = new("voltage", Unit.Volt, false);
+    public static readonly ParameterKind Current = new("current", Unit.Ampere, false);
+    public static readonly ParameterKind Position = new("position", Unit.One, false);
+    public static readonly ParameterKind Transconductance = new("transconductance", Unit.Siemens, true);
+    public static readonly ParameterKind ScaleError = new("scale error", Unit.One, false);
+
+    /// <summary>Gain of a transistor with collector and emitter exchanged; seen only through its saturation voltage.</summary>
+    public static readonly ParameterKind ReverseGain = new("reverse gain", Unit.One, true, false);
+
+    /// <summary>Offset voltage of an op-amp's input; what remains of a saturation voltage beyond its junctions.</summary>
+    public static readonly ParameterKind Offset = new("offset", Unit.Volt, false, false);
+
+    public override string ToString() => Name;
+}

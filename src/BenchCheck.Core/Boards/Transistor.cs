@@ -1,0 +1,62 @@
+using System.Collections.Immutable;
+using BenchCheck.Core.Quantities;
+
+namespace BenchCheck.Core.Boards;
+
+/// <summary>A bipolar transistor, npn or pnp, as two junctions and the collector current that they control.</summary>
+/// <remarks>
+/// Transport form (Ebers and Moll, Proc. IRE 42 (1954)): with z_F and z_R the currents that the base-emitter and the base-collector junction
+/// control, i_C = z_F − z_R − z_R/β_R and i_B = z_F/β + z_R/β_R. Active: z_R = 0, so i_C = β i_B. Off: both zero. Saturated: both
+/// conduct, so the collector-emitter voltage is the difference of the two drops and i_C/i_B is less than β.
+/// </remarks>
+/// <param name="Drop">base-emitter voltage at a collector current of <see cref="ReferenceAmperes"/>, positive for both polarities</param>
+/// <param name="Saturation">collector-emitter voltage in saturation under the constant-drop law, positive for both polarities</param>
+public sealed record Transistor(PartKind Kind, string Designator, ImmutableArray<string> Nodes, Nominal Gain, Nominal Drop, Nominal Saturation)
+    : Part(Kind, Designator, Nodes)
+{
+    public static readonly PartKind Npn = new("npn", ["collector", "base", "emitter"], "Q");
+    public static readonly PartKind Pnp = new("pnp", ["collector", "base", "emitter"], "Q");
+
+    public const int Collector = 0;
+    public const int Base = 1;
+    public const int Emitter = 2;
+
+    /// <summary>Base-emitter voltage at 1 mA taken when none is stated: common practice, no source.</summary>
+    public static readonly Nominal UsualDrop = Nominal.Within(0.65, Tolerance.Absolute(0.12));
+
+    /// <summary>Collector-emitter saturation voltage taken when none is stated; data sheets of small types give 0.05 V to 0.25 V.</summary>
+    public static readonly Nominal UsualSaturation = Nominal.Within(0.12, Tolerance.Absolute(0.1));
+
+    /// <summary>Gain of a small transistor of unstated type: plausibility band, common practice, no source.</summary>
+    public static readonly Nominal UsualGain = Nominal.Between(40, 600);
+
+    /// <summary>Reverse gain of a small transistor: common practice, no source.</summary>
+    public static readonly Nominal UsualReverseGain = Nominal.Between(0.5, 10);
+
+    public double ReferenceAmperes { get; init; } = 1e-3;
+
+    public bool IsNpn => ReferenceEquals(Kind, Npn);
+
+    public override ImmutableArray<PartParameter> Parameters =>
+    [
+        new(ParameterKind.Gain, Gain), new(ParameterKind.Drop, Drop), new(ParameterKind.ReverseGain, UsualReverseGain),
+        new(ParameterKind.Offset, Saturation),
+    ];
+
+    public override void Describe(PartElements elements, string? setting)
+    {
+        var drop = Coefficient.Of(1);
+        var less = Coefficient.Of(3, -1);
+        var (forward, reverse) = (Coefficient.Of(0), Coefficient.Of(2));
+        if (IsNpn)
+        {
+            elements.Add(new Junction(Base, Emitter, drop, default, forward, Collector, Emitter, ReferenceAmperes, 1, JunctionRole.BaseEmitter));
+            elements.Add(new Junction(Base, Collector, drop, less, reverse, Emitter, Collector, ReferenceAmperes, 1, JunctionRole.BaseCollector));
+        }
+        else
+        {
+            elements.Add(new Junction(Emitter, Base, drop, default, forward, Emitter, Collector, ReferenceAmperes, 1, JunctionRole.BaseEmitter));
+            elements.Add(new Junction(Collector, Base, drop, less, reverse, Collector, Emitter, ReferenceAmperes, 1, JunctionRole.BaseCollector));
+        }
+    }
+}
