@@ -20,6 +20,7 @@ public readonly record struct Coefficient(double Factor, int First, int Second, 
 
     public double Value(ReadOnlySpan<double> theta)
     {
+        if (Factor == 0) return 0;
         var value = Factor;
         if (First >= 0) value *= theta[First];
         if (Second >= 0) value *= IsComplement ? 1 - theta[Second] : theta[Second];

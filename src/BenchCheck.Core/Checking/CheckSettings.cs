@@ -1,3 +1,5 @@
+using BenchCheck.Core.Equations;
+
 namespace BenchCheck.Core.Checking;
 
 /// <summary>How a predicted band is computed.</summary>
@@ -11,16 +13,6 @@ public enum BandMethod
 
     /// <summary>worst case at the corners of the tolerance box</summary>
     WorstCase,
-}
-
-/// <summary>How a conducting junction's voltage depends on its current.</summary>
-public enum JunctionLaw
-{
-    /// <summary>the drop follows the current (Shockley)</summary>
-    Exponential,
-
-    /// <summary>the drop is the same at any current</summary>
-    ConstantDrop,
 }
 
 /// <summary>What the user may choose about a check.</summary>

@@ -1,0 +1,42 @@
+namespace BenchCheck.Core.Equations;
+
+/// <summary>The junction law z = I_s (exp(v / nV_T) − 1) with I_s set so that v = drop at the reference current, and its tangent.</summary>
+/// <remarks>
+/// Shockley, Bell Syst. Tech. J. 28 (1949). Below the voltage at which the slope resistance reaches 10 TΩ the curve goes on as a straight
+/// line of that slope, so that tangent and inverse exist for every v and z.
+/// </remarks>
+internal readonly struct JunctionCurve
+{
+    /// <summary>Slope resistance at which a junction counts as a mere leakage.</summary>
+    private const double LeakageOhms = 1e13;
+
+    private const double BoltzmannOverCharge = 8.617333262145177e-5;
+
+    private readonly double thermal;
+    private readonly double saturation;
+    private readonly double bendVolts;
+    private readonly double bendAmperes;
+
+    public JunctionCurve(double drop, double referenceAmperes, double thermalVolts)
+    {
+        thermal = thermalVolts;
+        // Capped so that an absurd drop met on the way of a fit neither overflows nor underflows.
+        saturation = referenceAmperes * Math.Exp(Math.Clamp(-drop / thermalVolts, -300, 30));
+        // slope = thermal / (z + I_s) = LeakageOhms
+        var total = thermalVolts / LeakageOhms;
+        bendAmperes = total - saturation;
+        bendVolts = thermal * Math.Log(total / saturation);
+    }
+
+    /// <summary>k T / e (k and e exact since the SI of 2019).</summary>
+    public static double ThermalVolts(double celsius) => BoltzmannOverCharge * (celsius + 273.15);
+
+    public double Volts(double amperes) =>
+        amperes <= bendAmperes ? bendVolts + (amperes - bendAmperes) * LeakageOhms : thermal * Math.Log((amperes + saturation) / saturation);
+
+    public double Amperes(double volts) =>
+        volts <= bendVolts ? bendAmperes + (volts - bendVolts) / LeakageOhms : saturation * (Math.Exp(volts / thermal) - 1);
+
+    /// <summary>dv/dz.</summary>
+    public double SlopeOhms(double amperes) => amperes <= bendAmperes ? LeakageOhms : thermal / (amperes + saturation);
+}

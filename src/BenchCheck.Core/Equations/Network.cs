@@ -1,0 +1,77 @@
+using System.Collections.Immutable;
+using BenchCheck.Core.Boards;
+
+namespace BenchCheck.Core.Equations;
+
+/// <summary>The equations of a board in one condition, compiled: which coefficient stands where, for any parameter vector θ.</summary>
+/// <remarks>
+/// Modified nodal analysis (Ho, Ruehli and Brennan, IEEE Trans. CAS-22 (1975)) with the junctions and limits drawn out as ports:
+/// <code>
+///   A(θ) x + C(θ) z = b(θ)        x: node voltages, then currents of voltage-defined branches
+///   v = D x,  v ≤ law(z), z ≥ 0   one row of D and one column of C a port
+/// </code>
+/// A row of a node sums the currents that leave it. The reference node is no unknown; its index is −1. Nodes that no linear element ties
+/// to the reference get a leakage of 1e-12 S there, one per island, so that A is regular whatever the ports do.
+/// </remarks>
+public sealed class Network
+{
+    internal const double LeakageSiemens = 1e-12;
+
+    internal readonly record struct CompiledConductor(int From, int To, Coefficient Ohms, int Part);
+
+    internal enum ControlKind : byte
+    {
+        None,
+
+        /// <summary>difference of two unknowns</summary>
+        Pair,
+
+        /// <summary>one unknown, a branch current</summary>
+        Current,
+    }
+
+    internal readonly record struct CompiledVoltage(
+        int Plus, int Minus, int Row, Coefficient Emf, Coefficient Ohms, ControlKind Control, int ControlPlus, int ControlMinus, Coefficient Gain, int Part);
+
+    internal readonly record struct CompiledCurrent(
+        int From, int To, Coefficient Amperes, ControlKind Control, int ControlPlus, int ControlMinus, Coefficient Gain, int Part);
+
+    internal readonly record struct CompiledAmplifier(int Plus, int Minus, int Output, int Row, Coefficient Offset, Coefficient Gain, int Part);
+
+    /// <summary>A junction (Row −1) or a limit (Row: the branch row that z overrides, with sign RowSign).</summary>
+    internal readonly record struct CompiledPort(
+        int High, int Low, Coefficient Drop, Coefficient Excess, Coefficient Gain, int TransportFrom, int TransportTo,
+        double ReferenceAmperes, double Ideality, JunctionRole? Role, int Row, double RowSign, int Part);
+
+    internal CompiledConductor[] Conductors = [];
+    internal CompiledVoltage[] Voltages = [];
+    internal CompiledCurrent[] Currents = [];
+    internal CompiledAmplifier[] Amplifiers = [];
+    internal CompiledPort[] Ports = [];
+    internal int[] Leaks = [];
+    internal double ThermalVolts;
+    internal Dictionary<string, int> NodeIndex = [];
+    internal ImmutableArray<Part> Parts = [];
+
+    internal Network(Condition condition)
+    {
+        Condition = condition;
+    }
+
+    public Condition Condition { get; }
+
+    /// <summary>Number of unknowns in x.</summary>
+    public int Size { get; internal set; }
+
+    /// <summary>How many of them are node voltages; they come first.</summary>
+    public int NodeCount { get; internal set; }
+
+    public int PortCount => Ports.Length;
+
+    /// <summary>Row of x that holds the current of the inserted ammeter, −1 without one.</summary>
+    public int AmmeterRow { get; internal set; } = -1;
+
+    /// <summary>Position of a node's voltage in x; −1 for the reference.</summary>
+    /// <exception cref="KeyNotFoundException">no such node</exception>
+    public int IndexOf(string node) => NodeIndex[node];
+}

@@ -1,0 +1,184 @@
+using System.Collections.Immutable;
+using BenchCheck.Core.Boards;
+
+namespace BenchCheck.Core.Equations;
+
+/// <summary>An ammeter in series with one pin of a part.</summary>
+/// <param name="BurdenOhms">resistance of the meter; zero for none</param>
+public sealed record Ammeter(string Part, int Pin, double BurdenOhms);
+
+/// <summary>Compiles a board in a condition into a <see cref="Network"/>.</summary>
+public sealed class NetworkCompiler
+{
+    private readonly Board board;
+    private readonly ParameterTable table;
+    private readonly Condition condition;
+    private readonly Dictionary<string, int> nodeIndex = new(StringComparer.Ordinal);
+    private readonly List<Network.CompiledConductor> conductors = [];
+    private readonly List<Network.CompiledVoltage> voltages = [];
+    private readonly List<Network.CompiledCurrent> currents = [];
+    private readonly List<Network.CompiledAmplifier> amplifiers = [];
+    private readonly List<Network.CompiledPort> ports = [];
+    private readonly Dictionary<string, int> senseRow = new(StringComparer.Ordinal);
+    private readonly Dictionary<(string Part, int Pin), string> insertedNode = [];
+    private int branchCount;
+
+    private NetworkCompiler(Board board, ParameterTable table, Condition condition)
+    {
+        this.board = board;
+        this.table = table;
+        this.condition = condition;
+    }
+
+    /// <param name="table">the parameter vector that coefficients refer to; made from the same board</param>
+    /// <param name="ammeter">an ammeter to insert; its current is read at <see cref="Network.AmmeterRow"/>, counted into the part</param>
+    public static Network Compile(Board board, ParameterTable table, Condition condition, Ammeter? ammeter = null)
+    {
+        ArgumentNullException.ThrowIfNull(board);
+        ArgumentNullException.ThrowIfNull(condition);
+        return new NetworkCompiler(board, table, condition).Compile(ammeter);
+    }
+
+    private Network Compile(Ammeter? ammeter)
+    {
+        nodeIndex[board.Reference] = -1;
+        foreach (var node in board.Nodes) AddNode(node);
+        foreach (var sensed in SensedParts()) Insert(sensed, 0);
+        if (ammeter is not null) Insert(ammeter.Part, ammeter.Pin);
+        var nodeCount = nodeIndex.Count - 1;
+        var ammeterRow = -1;
+
+        foreach (var (designator, pin) in insertedNode.Keys)
+        {
+            var part = board.Find(designator)!;
+            var isAmmeter = ammeter is not null && ammeter.Part == designator && ammeter.Pin == pin;
+            var row = nodeCount + branchCount++;
+            var burden = Coefficient.Constant(isAmmeter ? ammeter!.BurdenOhms : 0);
+            voltages.Add(new(
+                nodeIndex[part.Nodes[pin]], nodeIndex[insertedNode[(designator, pin)]], row, default, burden, Network.ControlKind.None, -1, -1, default, -1));
+            if (pin == 0) senseRow[designator] = row;
+            if (isAmmeter) ammeterRow = row;
+        }
+
+        for (var i = 0; i < board.Parts.Length; i++) AddPart(board.Parts[i], i, nodeCount);
+
+        return new Network(condition)
+        {
+            Conductors = [.. conductors],
+            Voltages = [.. voltages],
+            Currents = [.. currents],
+            Amplifiers = [.. amplifiers],
+            Ports = [.. ports],
+            Leaks = Islands(nodeCount),
+            NodeIndex = nodeIndex,
+            NodeCount = nodeCount,
+            Size = nodeCount + branchCount,
+            AmmeterRow = ammeterRow,
+            Parts = board.Parts,
+            ThermalVolts = JunctionCurve.ThermalVolts(board.Celsius),
+        };
+    }
+
+    private void AddNode(string node) => nodeIndex.TryAdd(node, nodeIndex.Count - 1);
+
+    private IEnumerable<string> SensedParts() =>
+        board.Parts.OfType<ControlledSource>().Select(s => s.Control).OfType<Control.PartCurrent>().Select(c => c.Designator).Distinct(StringComparer.Ordinal);
+
+    /// <summary>Splits a joint so that the current through it becomes an unknown.</summary>
+    private void Insert(string designator, int pin)
+    {
+        if (insertedNode.ContainsKey((designator, pin))) return;
+        // A space cannot occur in a node name that a file gives, so the new node has its own name.
+        var node = $"{board.Find(designator)!.JointName(pin)} inserted";
+        insertedNode[(designator, pin)] = node;
+        AddNode(node);
+    }
+
+    private void AddPart(Part part, int partIndex, int nodeCount)
+    {
+        var elements = new PartElements();
+        part.Describe(elements, condition.Switches.GetValueOrDefault(part.Designator));
+        var pins = new int[part.Nodes.Length];
+        for (var pin = 0; pin < pins.Length; pin++)
+            pins[pin] = nodeIndex[insertedNode.GetValueOrDefault((part.Designator, pin), part.Nodes[pin])];
+
+        Coefficient Map(Coefficient c) => c with
+        {
+            First = c.First < 0 ? -1 : table.IndexOf(part, c.First, condition.Name),
+            Second = c.Second < 0 ? -1 : table.IndexOf(part, c.Second, condition.Name),
+        };
+        int Pin(int pin) => pin < 0 ? -1 : pins[pin];
+
+        foreach (var e in elements.Conductors) conductors.Add(new(Pin(e.From), Pin(e.To), Map(e.Ohms), partIndex));
+
+        var drivenRow = -1;
+        foreach (var e in elements.VoltageBranches)
+        {
+            if (e.IsSupply && condition.SuppliesRemoved) continue;
+            drivenRow = nodeCount + branchCount++;
+            var (kind, plus, minus) = Resolve(e.Control);
+            voltages.Add(new(Pin(e.Plus), Pin(e.Minus), drivenRow, Map(e.Emf), Map(e.Ohms), kind, plus, minus, Map(e.Gain), partIndex));
+        }
+
+        foreach (var e in elements.Amplifiers)
+        {
+            drivenRow = nodeCount + branchCount++;
+            amplifiers.Add(new(Pin(e.Plus), Pin(e.Minus), Pin(e.Output), drivenRow, Map(e.Offset), Map(e.Gain), partIndex));
+        }
+
+        foreach (var e in elements.CurrentBranches)
+        {
+            if (e.IsSupply && condition.SuppliesRemoved) continue;
+            var (kind, plus, minus) = Resolve(e.Control);
+            currents.Add(new(Pin(e.From), Pin(e.To), Map(e.Amperes), kind, plus, minus, Map(e.Gain), partIndex));
+        }
+
+        foreach (var e in elements.Junctions)
+        {
+            var hasTransport = e.TransportFrom >= 0;
+            ports.Add(new(
+                Pin(e.Anode), Pin(e.Cathode), Map(e.Drop), Map(e.Excess), Map(e.Gain), hasTransport ? Pin(e.TransportFrom) : -1,
+                hasTransport ? Pin(e.TransportTo) : -1, e.ReferenceAmperes, e.Ideality, e.Role, -1, 0, partIndex));
+        }
+
+        foreach (var e in elements.Limits)
+        {
+            // z enters an amplifier's row as −z when it holds the output down, a voltage branch's row as +z.
+            var sign = (elements.Amplifiers.Count > 0 ? -1 : 1) * (e.IsUpper ? 1 : -1);
+            var (high, low) = e.IsUpper ? (e.Output, e.Pin) : (e.Pin, e.Output);
+            ports.Add(new(Pin(high), Pin(low), Map(e.Margin) with { Factor = -e.Margin.Factor }, default, default, -1, -1, 1, 0, null, drivenRow, sign, partIndex));
+        }
+    }
+
+    private (Network.ControlKind Kind, int Plus, int Minus) Resolve(Control? control) => control switch
+    {
+        null => (Network.ControlKind.None, -1, -1),
+        Control.NodePair pair => (Network.ControlKind.Pair, nodeIndex[pair.Plus], nodeIndex[pair.Minus]),
+        Control.PartCurrent part => (Network.ControlKind.Current, senseRow[part.Designator], -1),
+        _ => throw new ArgumentOutOfRangeException(nameof(control)),
+    };
+
+    /// <summary>One node of each group that no linear element ties to the reference.</summary>
+    private int[] Islands(int nodeCount)
+    {
+        // Node −1, the reference, is kept at position 0.
+        var root = new int[nodeCount + 1];
+        for (var i = 0; i < root.Length; i++) root[i] = i;
+        int Find(int i)
+        {
+            while (root[i] != i) i = root[i] = root[root[i]];
+            return i;
+        }
+        void Join(int a, int b)
+        {
+            var (ra, rb) = (Find(a + 1), Find(b + 1));
+            // The smaller index wins, so the reference stays the root of its own group.
+            if (ra < rb) root[rb] = ra;
+            else root[ra] = rb;
+        }
+        foreach (var c in conductors) Join(c.From, c.To);
+        foreach (var v in voltages) Join(v.Plus, v.Minus);
+        foreach (var a in amplifiers) Join(a.Output, -1);
+        return [.. Enumerable.Range(1, nodeCount).Where(i => Find(i) == i).Select(i => i - 1)];
+    }
+}
