@@ -34,6 +34,14 @@ public sealed class Board
         }
     }
 
+    private Board(Board board, ImmutableArray<string> nodes)
+    {
+        (Title, Reference, Origin, Parts, Conditions, Adjacent) = (board.Title, board.Reference, board.Origin, board.Parts, board.Conditions, board.Adjacent);
+        Celsius = board.Celsius;
+        byDesignator = board.byDesignator;
+        Nodes = nodes;
+    }
+
     public string Title { get; }
 
     /// <summary>The node that every voltage is counted against unless a reading says otherwise.</summary>
@@ -44,7 +52,7 @@ public sealed class Board
     public ImmutableArray<Part> Parts { get; }
 
     /// <summary>At least one; the first is meant where a reading names none.</summary>
-    public ImmutableArray<Condition> Conditions { get; }
+    public ImmutableArray<Condition> Conditions { get; private init; }
 
     /// <summary>Every node, the reference first, the others in the order of the parts list.</summary>
     public ImmutableArray<string> Nodes { get; }
@@ -54,6 +62,20 @@ public sealed class Board
 
     /// <summary>Temperature of the junctions in degrees Celsius.</summary>
     public double Celsius { get; init; } = 25;
+
+    /// <summary>The same board with some parts exchanged and others added: what a fault makes of it. Every node stays, even one left bare.</summary>
+    /// <param name="exchanged">parts that take the place of those with the same designator</param>
+    /// <param name="added">parts with designators of their own</param>
+    public Board With(IEnumerable<Part> exchanged, IEnumerable<Part> added)
+    {
+        var replacement = exchanged.ToDictionary(p => p.Designator, StringComparer.Ordinal);
+        ImmutableArray<Part> parts = [.. Parts.Select(p => replacement.GetValueOrDefault(p.Designator, p)), .. added];
+        var board = new Board(Title, Reference, Origin, parts, Conditions, Adjacent) { Celsius = Celsius };
+        return new Board(board, [.. Nodes.Union(board.Nodes, StringComparer.Ordinal)]);
+    }
+
+    /// <summary>The same board with other conditions of the same names.</summary>
+    public Board In(ImmutableArray<Condition> conditions) => new(this, Nodes) { Conditions = conditions };
 
     public Part? Find(string designator) => byDesignator.GetValueOrDefault(designator);
 

@@ -1,4 +1,7 @@
+using System.Collections.Immutable;
 using BenchCheck.Core.Checking;
+using BenchCheck.Core.Equations;
+using BenchCheck.Core.Fitting;
 using BenchCheck.Core.Metering;
 
 namespace BenchCheck.Core.Diagnosis;
@@ -7,14 +10,62 @@ namespace BenchCheck.Core.Diagnosis;
 /// The whole job for one board: readings in, <see cref="CheckResult"/> out. Holds what is computed once for a board, so one instance serves
 /// many reading sets; instances are not shared between threads.
 /// </summary>
-public sealed class Reconciliation(Bench bench, CheckSettings settings)
+public sealed class Reconciliation
 {
-    public Bench Bench { get; } = bench;
+    private const double LeastShown = 0.002;
+    private const int MostSuspects = 12;
 
-    public CheckSettings Settings { get; } = settings;
+    private readonly NetworkSolver solver;
+    private readonly EvidenceFit fit = new();
+    private readonly FaultRates rates;
+    private (ImmutableArray<Probe> Probes, ImmutableArray<bool> HasScaleError, FaultSearch Search)? compiled;
 
-    /// <exception cref="Equations.NoOperatingStateException">no state of the devices satisfies the equations</exception>
+    public Reconciliation(Bench bench, CheckSettings settings, FaultRates? rates = null)
+    {
+        ArgumentNullException.ThrowIfNull(bench);
+        ArgumentNullException.ThrowIfNull(settings);
+        Bench = bench;
+        Settings = settings;
+        solver = new NetworkSolver(settings.Law);
+        this.rates = rates ?? FaultRates.For(bench.Board.Origin);
+    }
+
+    public Bench Bench { get; }
+
+    public CheckSettings Settings { get; }
+
+    /// <exception cref="NoOperatingStateException">no state of the devices satisfies the equations</exception>
     /// <exception cref="OperationCanceledException">cancelled</exception>
-    public CheckResult Run(ReadingSet readings, CancellationToken cancel = default) =>
-        throw new NotSupportedException($"{readings.Serial}{cancel}");
+    public CheckResult Run(ReadingSet readings, CancellationToken cancel = default)
+    {
+        ArgumentNullException.ThrowIfNull(readings);
+        var plan = ReadingPlan.Of(Bench, readings);
+        if (!Settings.FindFaults)
+        {
+            var model = new BoardModel(Bench.Board, plan.Probes, plan.HasScaleError, solver);
+            return Checker.Check(Bench, readings, plan, model, fit, Settings).Result;
+        }
+
+        var search = SearchFor(plan);
+        var (check, _) = Checker.Check(Bench, readings, plan, search.Healthy, fit, Settings);
+        int[] lines = [.. readings.Readings.Select(r => r.Lines.IsDefaultOrEmpty ? 0 : r.Lines[0])];
+        var posterior = Posterior.Of(search.Find(plan.Measured, plan.Noise, lines, cancel));
+        double[] sigma = [.. Enumerable.Range(0, plan.Measured.Length).Select(plan.StandardUncertainty)];
+        var groups = FaultGroup.Of(posterior.Where(f => f.Probability > 1e-6), sigma);
+        var words = new SuspectWords(check, plan);
+        return check with
+        {
+            Suspects = [.. groups.Where(g => g.Probability > LeastShown).Take(MostSuspects).Select(words.Suspect)],
+            Next = new NextReadings(Bench, plan, fit, solver).Rank(groups, cancel),
+        };
+    }
+
+    /// <summary>The compiled faults, kept while boards are read at the same places.</summary>
+    private FaultSearch SearchFor(ReadingPlan plan)
+    {
+        if (compiled is { } kept && kept.Probes.SequenceEqual(plan.Probes) && kept.HasScaleError.SequenceEqual(plan.HasScaleError)) return kept.Search;
+        var search = new FaultSearch(Bench.Board, plan.Probes, plan.HasScaleError, solver, rates);
+        compiled = (plan.Probes, plan.HasScaleError, search);
+        return search;
+    }
 }

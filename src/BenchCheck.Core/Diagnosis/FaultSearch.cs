@@ -1,0 +1,148 @@
+using System.Collections.Immutable;
+using BenchCheck.Core.Boards;
+using BenchCheck.Core.Checking;
+using BenchCheck.Core.Equations;
+using BenchCheck.Core.Fitting;
+using BenchCheck.Core.Metering;
+
+namespace BenchCheck.Core.Diagnosis;
+
+/// <summary>Fits every fault of the catalogue to a set of readings, all tolerances active, and scores it by its evidence.</summary>
+/// <remarks>
+/// Compiled once for a board and the places where it is read, so that many boards of one kind share the work. A fault that leaves a number
+/// free is forecast at several values of it first; the fit starts from the best of them.
+/// </remarks>
+internal sealed class FaultSearch
+{
+    /// <summary>χ² above the best so far at which a hypothesis is given up: its probability is then below 1e-20.</summary>
+    private const double Hopeless = 100;
+
+    /// <summary>How far off the unexplained alternative lets a reading be, as a share of the largest reading of its kind.</summary>
+    private const double UnexplainedShare = 0.3;
+
+    private static readonly ImmutableArray<double> StartsInSigma = [-1.6, -0.8, 0, 0.8, 1.6];
+
+    private readonly NetworkSolver solver;
+    private readonly IReadOnlyList<Probe> probes;
+    private readonly IReadOnlyList<bool> hasScaleError;
+    private readonly EvidenceFit fit = new();
+    private readonly List<Compiled> compiled = [];
+    private readonly FaultRates rates;
+
+    public FaultSearch(Board board, IReadOnlyList<Probe> probes, IReadOnlyList<bool> hasScaleError, NetworkSolver solver, FaultRates rates)
+    {
+        this.solver = solver;
+        this.probes = probes;
+        this.hasScaleError = hasScaleError;
+        this.rates = rates;
+        Healthy = new BoardModel(board, probes, hasScaleError, solver);
+        foreach (var hypothesis in FaultCatalogue.Of(board)) compiled.Add(Compile(hypothesis));
+        var places = compiled.SelectMany(c => c.Hypothesis.Names).GroupBy(n => n.Kind).ToDictionary(g => g.Key, g => g.Count());
+        foreach (var c in compiled) c.LogRates = [.. c.Hypothesis.Names.Select(n => Math.Log(rates[n.Kind] / places[n.Kind]))];
+    }
+
+    public BoardModel Healthy { get; }
+
+    /// <summary>Every fault worth naming, the healthy board and the broad alternative included.</summary>
+    /// <param name="lines">line of each reading in its file, zero for none: wrong readings are named by it</param>
+    public List<Fault> Find(double[] measured, double[] noise, IReadOnlyList<int> lines, CancellationToken cancel)
+    {
+        var faults = new List<Fault>();
+        var best = double.PositiveInfinity;
+        if (Alternative(FaultKind.None, "no fault that these readings show", measured, noise) is { } none)
+        {
+            faults.Add(none);
+            best = none.Evidence.ChiSquared;
+        }
+
+        if (Alternative(FaultKind.Unexplained, "something that is not on the list of faults", measured, Broadened(measured, noise)) is { } other)
+            faults.Add(other with { IsBroad = true });
+        faults.AddRange(new ReadingErrors(probes, lines, fit).Of(Healthy, measured, noise, Math.Log(rates[FaultKind.ReadingError])));
+        foreach (var c in compiled)
+        {
+            cancel.ThrowIfCancellationRequested();
+            if (c.LogRates.All(double.IsNegativeInfinity)) continue;
+            var evidence = Fit(c, measured, noise, best + Hopeless);
+            if (double.IsNegativeInfinity(evidence.LogEvidence)) continue;
+            best = Math.Min(best, evidence.ChiSquared);
+            faults.Add(Record(c, evidence, noise));
+        }
+
+        return faults;
+    }
+
+    private Fault? Alternative(string kind, string words, double[] measured, double[] noise)
+    {
+        Healthy.Forget();
+        var evidence = fit.Fit(Healthy, measured, noise);
+        return double.IsNegativeInfinity(evidence.LogEvidence) ? null : new Fault(
+            [new NamedFault(kind, [], [], [], [], null, null, null, words)], [Math.Log(rates[kind])], evidence, Healthy, fit.Phi.ToArray(), noise, fit.Predicted.ToArray());
+    }
+
+    /// <summary>Noise of the broad alternative: each reading may be off by a good part of the largest of its kind.</summary>
+    private double[] Broadened(double[] measured, double[] noise)
+    {
+        var result = new double[noise.Length];
+        for (var i = 0; i < noise.Length; i++)
+        {
+            var quantity = probes[i].Quantity;
+            var largest = Enumerable.Range(0, noise.Length).Where(k => probes[k].Quantity == quantity).Max(k => Math.Abs(measured[k]));
+            var breadth = UnexplainedShare * largest;
+            result[i] = noise[i] + breadth * breadth;
+        }
+
+        return result;
+    }
+
+    private Compiled Compile(FaultHypothesis hypothesis)
+    {
+        var model = new BoardModel(hypothesis.Board, probes, hasScaleError, solver);
+        var free = -1;
+        if (hypothesis.Free is { } number)
+        {
+            for (var i = 0; i < model.BoardParameterCount; i++)
+            {
+                if (model.Parameters[i].Owner == number.Part && model.Parameters[i].Kind == number.Kind) free = i;
+            }
+        }
+
+        return new Compiled(hypothesis, model, free);
+    }
+
+    private Evidence Fit(Compiled c, ReadOnlySpan<double> measured, ReadOnlySpan<double> noise, double giveUpAbove)
+    {
+        c.Model.Forget();
+        if (c.Free < 0) return fit.Fit(c.Model, measured, noise, -1, 0, giveUpAbove);
+
+        // The two most promising starts: a fit can have a minimum on either side of the nominal value.
+        var parameter = c.Model.Parameters[c.Free];
+        var (first, second) = (double.PositiveInfinity, double.PositiveInfinity);
+        var (firstAt, secondAt) = (parameter.Mean, parameter.Mean);
+        foreach (var offset in StartsInSigma)
+        {
+            var at = parameter.Mean + offset * parameter.Sigma;
+            var chiSquared = fit.Forecast(c.Model, measured, noise, c.Free, at);
+            if (chiSquared < first) (second, secondAt, first, firstAt) = (first, firstAt, chiSquared, at);
+            else if (chiSquared < second) (second, secondAt) = (chiSquared, at);
+        }
+
+        var evidence = fit.Fit(c.Model, measured, noise, c.Free, firstAt, giveUpAbove);
+        if (evidence.ChiSquared < giveUpAbove - Hopeless || !double.IsFinite(second)) return evidence;
+        var other = fit.Fit(c.Model, measured, noise, c.Free, secondAt, giveUpAbove);
+        return other.ChiSquared < evidence.ChiSquared ? other : fit.Fit(c.Model, measured, noise, c.Free, firstAt, giveUpAbove);
+    }
+
+    private Fault Record(Compiled c, Evidence evidence, ReadOnlySpan<double> noise)
+    {
+        double? value = c.Free < 0 ? null : c.Model.Parameters[c.Free].Value(fit.Phi[c.Free]);
+        var order = Enumerable.Range(0, c.LogRates.Length).OrderByDescending(i => c.LogRates[i]).ToArray();
+        return new Fault(
+            [.. order.Select(i => FaultNaming.Name(c.Hypothesis.Names[i], c.Hypothesis.Free, value))], [.. order.Select(i => c.LogRates[i])], evidence, c.Model,
+            fit.Phi.ToArray(), noise.ToArray(), fit.Predicted.ToArray());
+    }
+
+    private sealed record Compiled(FaultHypothesis Hypothesis, BoardModel Model, int Free)
+    {
+        public ImmutableArray<double> LogRates { get; set; } = [];
+    }
+}

@@ -1,0 +1,143 @@
+using System.Collections.Immutable;
+using BenchCheck.Core.Boards;
+using BenchCheck.Core.Checking;
+using BenchCheck.Core.Equations;
+using BenchCheck.Core.Fitting;
+using BenchCheck.Core.Metering;
+using BenchCheck.Core.Quantities;
+
+namespace BenchCheck.Core.Diagnosis;
+
+/// <summary>Ranks the readings not yet taken by what each is expected to tell about the suspects.</summary>
+/// <remarks>
+/// Each likely fault predicts each candidate with its own uncertainty: that of its fitted parameters, carried through the Jacobian, and
+/// the meter's. Candidates are the node voltages of the DC conditions and, where the board has an unpowered condition, resistances between
+/// nodes that share a part.
+/// </remarks>
+internal sealed class NextReadings(Bench bench, ReadingPlan plan, EvidenceFit fit, NetworkSolver solver)
+{
+    /// <summary>Faults beyond this many, or less likely than this, do not change which reading is best.</summary>
+    private const int MostFaults = 40;
+
+    private const double LeastProbability = 2e-4;
+
+    /// <summary>Below this many bits a reading is not worth the lead.</summary>
+    private const double LeastBits = 0.01;
+
+    private const int MostReadings = 8;
+
+    public ImmutableArray<NextReading> Rank(List<FaultGroup> groups, CancellationToken cancel)
+    {
+        var candidates = Candidates();
+        var faults = groups.SelectMany((g, index) => g.Members.Select(m => (m.Fault, m.Probability, Group: index)))
+            .Where(f => !f.Fault.IsBroad && f.Probability > LeastProbability).OrderByDescending(f => f.Probability).Take(MostFaults).ToArray();
+        if (candidates.Length == 0 || faults.Length < 2) return [];
+
+        var (count, kinds) = (candidates.Length, faults.Length);
+        var mean = new double[count, kinds];
+        var variance = new double[count, kinds];
+        var usable = new bool[kinds];
+        for (var h = 0; h < kinds; h++)
+        {
+            cancel.ThrowIfCancellationRequested();
+            usable[h] = TryPredict(faults[h].Fault, candidates, mean, variance, h);
+        }
+
+        var chosen = Enumerable.Range(0, kinds).Where(h => usable[h]).ToArray();
+        var total = chosen.Sum(h => faults[h].Probability);
+        double[] probability = [.. chosen.Select(h => faults[h].Probability / total)];
+        var ranked = new List<NextReading>();
+        for (var c = 0; c < count; c++)
+        {
+            double[] m = [.. chosen.Select(h => mean[c, h])];
+            double[] v = [.. chosen.Select(h => variance[c, h])];
+            var bits = MixtureInformation.Bits(probability, m, v);
+            if (bits < LeastBits) continue;
+            ranked.Add(Describe(candidates[c], bits, [.. chosen.Select((h, i) => (faults[h].Fault, faults[h].Group, m[i], Math.Sqrt(v[i])))]));
+        }
+
+        // Among readings that tell about the same, one that needs no change of the set-up comes first.
+        return [.. ranked.OrderByDescending(r => Math.Round(r.Bits, 1)).ThenBy(r => r.Caution is null ? 0 : 1).ThenByDescending(r => r.Bits).Take(MostReadings)];
+    }
+
+    private Probe[] Candidates()
+    {
+        var board = bench.Board;
+        var meter = bench.Meters[0];
+        var result = new List<Probe>();
+        foreach (var condition in board.Conditions.Where(c => !c.IsSmallSignal))
+        {
+            if (condition.SuppliesRemoved)
+            {
+                var pairs = board.Parts.Where(p => p is not (Supply or CurrentSource))
+                    .SelectMany(p => p.Nodes.SelectMany((a, i) => p.Nodes.Skip(i + 1).Select(b => (a, b)))).Where(x => x.a != x.b)
+                    .Select(x => string.CompareOrdinal(x.a, x.b) < 0 || x.b == board.Reference ? x : (a: x.b, b: x.a)).Distinct();
+                result.AddRange(pairs.Select(x => new Probe(condition.Name, ReadingQuantity.Resistance, x.a, x.b, meter, OhmRange(meter))));
+            }
+            else
+            {
+                result.AddRange(board.Nodes.Skip(1).Select(n => new Probe(condition.Name, ReadingQuantity.Voltage, n, board.Reference, meter, 1)));
+            }
+        }
+
+        return [.. result.Where(c => !plan.Probes.Any(p =>
+            p.Condition == c.Condition && p.Quantity == c.Quantity && p.At == c.At && (p.Against ?? board.Reference) == c.Against))];
+    }
+
+    private static double OhmRange(Meter meter) => (meter.Resistance ?? Meter.Usual.Resistance!).RangeFor(50e3);
+
+    private bool TryPredict(Fault fault, Probe[] candidates, double[,] mean, double[,] variance, int h)
+    {
+        fault.Model.Forget();
+        if (double.IsInfinity(fit.Fit(fault.Model, plan.Measured, fault.Noise, fault.Phi).ChiSquared)) return false;
+        var p = fault.Model.BoardParameterCount;
+        var covariance = new double[p * p];
+        fit.Posterior(p, covariance);
+        var model = new BoardModel(fault.Model.Board, candidates, new bool[candidates.Length], solver);
+        var values = new double[candidates.Length];
+        var jacobian = new double[candidates.Length * p];
+        try
+        {
+            model.Predict(fit.Phi[..p], values, jacobian);
+        }
+        catch (NoOperatingStateException)
+        {
+            return false;
+        }
+
+        for (var c = 0; c < candidates.Length; c++)
+        {
+            var row = jacobian.AsSpan(c * p, p);
+            var sum = 0.0;
+            for (var k = 0; k < p; k++) sum += row[k] * LuFactor.Dot(covariance.AsSpan(k * p, p), row);
+            var probe = candidates[c] with { Range = candidates[c].Function.RangeFor(values[c]) };
+            var (own, scale) = (probe.CountsUncertainty, probe.ScaleUncertainty * values[c]);
+            if (candidates[c].Quantity == ReadingQuantity.Resistance)
+            {
+                // An ohmmeter shows nothing above its highest range: all such values are the same to it.
+                var top = probe.Function.Ranges.IsEmpty ? double.PositiveInfinity : probe.Function.Ranges[^1];
+                if (values[c] > top) (values[c], sum) = (top, 0);
+            }
+
+            mean[c, h] = values[c];
+            variance[c, h] = Math.Max(0, sum) + own * own + scale * scale;
+        }
+
+        return true;
+    }
+
+    private NextReading Describe(Probe probe, double bits, (Fault Fault, int Group, double Value, double Sigma)[] predictions)
+    {
+        var unit = probe.Quantity.Unit();
+        var leaders = predictions.GroupBy(x => x.Group).Select(g => g.First()).OrderBy(x => x.Group).ToArray();
+        var shown = leaders.Take(4).Select(x => $"near {EngineeringNotation.Format(x.Value, unit)}: {x.Fault.Named[0].Text}");
+        var place = probe.Against == bench.Board.Reference ? probe.At : $"{probe.At} against {probe.Against}";
+        var condition = bench.Board.Conditions.Length > 1 ? $" ({probe.Condition})" : "";
+        string? caution = probe.Quantity == ReadingQuantity.Resistance
+            ? "Supplies off and removed, capacitors discharged first."
+            : leaders.Any(x => Cautions.IsHazardous(x.Value)) ? $"Hazardous voltage: above {Cautions.HazardousVoltsDc} V may stand here." : null;
+        return new NextReading(
+            probe.Condition, probe.Quantity, probe.At, probe.Against, bits, [.. leaders.Select(x => new Expectation(x.Group, x.Value, x.Sigma))], caution,
+            $"{place}{condition} {string.Join("; ", shown)}");
+    }
+}

@@ -1,0 +1,200 @@
+using System.Collections.Immutable;
+using BenchCheck.Core.Boards;
+using BenchCheck.Core.Equations;
+using BenchCheck.Core.Metering;
+
+namespace BenchCheck.Core.Fitting;
+
+/// <summary>A board with the places where it is read: the prediction f(φ) of every reading and its Jacobian.</summary>
+/// <remarks>
+/// Holds one compiled network for each condition in use, and one for each inserted ammeter. Readings of one meter, function and range share
+/// a scale error ε, so the meter shows (1 + ε) times what is there. Shapes: m readings, p fitted parameters; Jacobian m×p, row-major, in
+/// units of φ. Remembers the devices' last operating state as the start of the next search; not for use by two threads at once.
+/// </remarks>
+public sealed class BoardModel
+{
+    private readonly NetworkSolver solver;
+    private readonly Setup[] setups;
+    private readonly double[] theta;
+    private readonly double[] gradient;
+    private readonly int[] scaleOfReading;
+    private readonly FitParameter[] fitted;
+
+    /// <param name="probes">where the board is read; the order of predictions</param>
+    /// <param name="hasScaleError">which readings carry the meter's scale error: those whose uncertainty was not stated</param>
+    /// <param name="solver">shared workspace; any number of models may use one in turn</param>
+    public BoardModel(Board board, IReadOnlyList<Probe> probes, IReadOnlyList<bool> hasScaleError, NetworkSolver solver)
+    {
+        ArgumentNullException.ThrowIfNull(board);
+        ArgumentNullException.ThrowIfNull(probes);
+        ArgumentNullException.ThrowIfNull(hasScaleError);
+        Board = board;
+        this.solver = solver;
+        Table = new ParameterTable(board);
+        theta = [.. Table.Entries.Select(e => e.Nominal.IsUnknown ? FitParameter.StartOf(e.Kind) : e.Nominal.Value)];
+        gradient = new double[Table.Count];
+        ReadingCount = probes.Count;
+
+        var parameters = ImmutableArray.CreateBuilder<FitParameter>();
+        for (var i = 0; i < Table.Count; i++)
+        {
+            if (FitParameter.Of(Table.Entries[i], i) is { } parameter) parameters.Add(parameter);
+        }
+
+        BoardParameterCount = parameters.Count;
+        scaleOfReading = new int[probes.Count];
+        var groups = new Dictionary<(string, ReadingQuantity, double), int>();
+        for (var j = 0; j < probes.Count; j++)
+        {
+            scaleOfReading[j] = -1;
+            if (!hasScaleError[j] || probes[j].ScaleUncertainty == 0) continue;
+            if (!groups.TryGetValue(probes[j].ScaleGroup, out var index))
+            {
+                groups[probes[j].ScaleGroup] = index = parameters.Count;
+                parameters.Add(ScaleError(probes[j]));
+            }
+
+            scaleOfReading[j] = index;
+        }
+
+        Parameters = parameters.ToImmutable();
+        fitted = [.. Parameters];
+        setups = Arrange(board, probes);
+    }
+
+    internal NetworkSolver Solver => solver;
+
+    public Board Board { get; }
+
+    public ParameterTable Table { get; }
+
+    public ImmutableArray<FitParameter> Parameters { get; }
+
+    /// <summary>How many of the parameters belong to the board; the meter's scale errors follow them.</summary>
+    public int BoardParameterCount { get; }
+
+    public int ReadingCount { get; }
+
+    /// <summary>Predicts every reading.</summary>
+    /// <param name="phi">p values</param>
+    /// <param name="predicted">receives m values, SI units</param>
+    /// <param name="jacobian">receives m×p derivatives; empty when not wanted</param>
+    /// <exception cref="NoOperatingStateException">the equations have no solution at φ</exception>
+    public void Predict(ReadOnlySpan<double> phi, Span<double> predicted, Span<double> jacobian)
+    {
+        var p = fitted.Length;
+        Load(phi);
+        foreach (var setup in setups)
+        {
+            solver.Solve(setup.Network, theta, setup.PortStart);
+            solver.PortCurrents.CopyTo(setup.PortStart);
+            for (var k = 0; k < setup.Readings.Length; k++)
+            {
+                var j = setup.Readings[k];
+                var scale = scaleOfReading[j] < 0 ? 1 : 1 + phi[scaleOfReading[j]];
+                if (jacobian.IsEmpty)
+                {
+                    predicted[j] = scale * solver.Read(setup.Measurements[k], []);
+                    continue;
+                }
+
+                var value = solver.Read(setup.Measurements[k], gradient);
+                predicted[j] = scale * value;
+                var row = jacobian.Slice(j * p, p);
+                row.Clear();
+                for (var i = 0; i < BoardParameterCount; i++)
+                {
+                    var parameter = fitted[i];
+                    var slope = scale * gradient[parameter.ThetaIndex];
+                    row[i] = parameter.IsLogarithmic ? slope * theta[parameter.ThetaIndex] : slope;
+                }
+
+                if (scaleOfReading[j] >= 0) row[scaleOfReading[j]] = value;
+            }
+        }
+    }
+
+    /// <summary>Solves the board in one condition without any meter, for what is not read: currents, states, power.</summary>
+    public OperatingPoint Operate(ReadOnlySpan<double> phi, Condition condition)
+    {
+        Load(phi);
+        var network = NetworkCompiler.Compile(Board, Table, condition);
+        solver.Solve(network, theta);
+        return OperatingPoint.Of(network, solver, theta);
+    }
+
+    /// <summary>Forgets the remembered operating states, so that the next prediction does not depend on those before it.</summary>
+    public void Forget()
+    {
+        foreach (var setup in setups) setup.PortStart.AsSpan().Clear();
+    }
+
+    private void Load(ReadOnlySpan<double> phi)
+    {
+        for (var i = 0; i < BoardParameterCount; i++)
+        {
+            var parameter = fitted[i];
+            theta[parameter.ThetaIndex] = parameter.IsLogarithmic ? Math.Exp(Math.Clamp(phi[i], -60, 60)) : phi[i];
+        }
+    }
+
+    private static FitParameter ScaleError(Probe probe) => new(
+        probe.ScaleGroupName, ParameterKind.ScaleError, null,
+        Quantities.Nominal.Within(0, Quantities.Tolerance.Absolute(probe.Function.ReadingFraction)), -1, false, 0, probe.ScaleUncertainty);
+
+    private Setup[] Arrange(Board board, IReadOnlyList<Probe> probes)
+    {
+        var plain = new Dictionary<string, List<int>>(StringComparer.Ordinal);
+        var result = new List<Setup>();
+        for (var j = 0; j < probes.Count; j++)
+        {
+            var probe = probes[j];
+            var condition = board.FindCondition(probe.Condition)
+                ?? throw new ArgumentException($"the board has no condition \"{probe.Condition}\"", nameof(probes));
+            if (probe.Quantity == ReadingQuantity.Current)
+            {
+                var (part, pin) = Joint(board, probe.At);
+                var network = NetworkCompiler.Compile(board, Table, condition, new Ammeter(part, pin, probe.Function.BurdenVolts / probe.Range));
+                result.Add(new Setup(network, [j], [new Measurement(network.AmmeterRow, -1)]));
+            }
+            else
+            {
+                if (!plain.TryGetValue(condition.Name, out var list)) plain[condition.Name] = list = [];
+                list.Add(j);
+            }
+        }
+
+        foreach (var (name, readings) in plain)
+        {
+            var network = NetworkCompiler.Compile(board, Table, board.FindCondition(name)!);
+            result.Add(new Setup(network, [.. readings], [.. readings.Select(j => Connect(network, probes[j], board.Reference))]));
+        }
+
+        return [.. result];
+    }
+
+    private static Measurement Connect(Network network, Probe probe, string reference)
+    {
+        var (high, low) = (network.IndexOf(probe.At), network.IndexOf(probe.Against ?? reference));
+        return probe.Quantity switch
+        {
+            ReadingQuantity.Voltage => new Measurement(high, low, LoadSiemens: 1 / probe.Meter.InputOhms),
+            ReadingQuantity.Resistance => new Measurement(high, low, TestAmperes: probe.Function.TestVolts / probe.Range),
+            _ => throw new NotSupportedException($"a reading of {probe.Quantity.Name()} cannot be predicted in a DC condition"),
+        };
+    }
+
+    /// <summary>Part and pin of "R3" (its first pin) or "Q1.base".</summary>
+    private static (string Part, int Pin) Joint(Board board, string at)
+    {
+        var dot = at.LastIndexOf('.');
+        if (dot > 0 && board.Find(at[..dot]) is { } owner && owner.Kind.Pins.IndexOf(at[(dot + 1)..]) is >= 0 and var pin) return (owner.Designator, pin);
+        return board.Find(at) is { } part ? (part.Designator, 0) : throw new ArgumentException($"the board has no part or pin \"{at}\"", nameof(at));
+    }
+
+    private sealed record Setup(Network Network, int[] Readings, Measurement[] Measurements)
+    {
+        /// <summary>The devices' port currents last found, as the next start.</summary>
+        public double[] PortStart { get; } = new double[Network.PortCount];
+    }
+}

@@ -1,0 +1,40 @@
+using BenchCheck.Core.Quantities;
+
+namespace BenchCheck.Core.Metering;
+
+/// <summary>Where and how a reading is taken, without its value: all that a prediction needs.</summary>
+/// <param name="At">a node; for a current a part or a pin</param>
+/// <param name="Against">the other node; null for a current</param>
+/// <param name="Range">full scale of the meter's range, in SI units</param>
+public sealed record Probe(string Condition, ReadingQuantity Quantity, string At, string? Against, Meter Meter, double Range)
+{
+    /// <summary>The function of the meter in use; that of <see cref="Meter.Usual"/> when the meter's description lacks it.</summary>
+    public MeterFunction Function => Meter.FunctionFor(Quantity) ?? Meter.Usual.FunctionFor(Quantity) ?? Exact;
+
+    /// <summary>Function of a quantity that no meter shows directly (a gain): its uncertainty must be stated with the reading.</summary>
+    private static readonly MeterFunction Exact = new(0.01, 0, []);
+
+    public static Probe Of(Bench bench, Reading reading)
+    {
+        ArgumentNullException.ThrowIfNull(bench);
+        ArgumentNullException.ThrowIfNull(reading);
+        var meter = bench.MeterOf(reading);
+        var probe = new Probe(reading.Condition, reading.Quantity, reading.At, reading.Against, meter, 0);
+        return probe with { Range = reading.Range ?? probe.Function.RangeFor(reading.Value) };
+    }
+
+    /// <summary>Standard uncertainty of the fixed part of the accuracy: rectangular of half-width counts · resolution (JCGM 100:2008, 4.3.7).</summary>
+    public double CountsUncertainty => Function.Counts * Range / Meter.FullScaleCounts / Math.Sqrt(3);
+
+    /// <summary>
+    /// Standard uncertainty of the scale error, as a fraction of the reading: rectangular. It is common to all readings of one meter,
+    /// function and range (JCGM 100:2008, F.1.2).
+    /// </summary>
+    public double ScaleUncertainty => Function.ReadingFraction / Math.Sqrt(3);
+
+    /// <summary>Name of what shares the scale error.</summary>
+    public string ScaleGroupName => $"{Meter.Name}, {Quantity.Name()}, {EngineeringNotation.Format(Range, Quantity.Unit())} range";
+
+    /// <summary>What shares the scale error: "handheld, voltage, 6 V range".</summary>
+    public (string Meter, ReadingQuantity Function, double Range) ScaleGroup => (Meter.Name, Quantity, Range);
+}
