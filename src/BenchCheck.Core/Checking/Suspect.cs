@@ -23,4 +23,8 @@ public sealed record Suspect(
 /// <param name="Text">short plain words: "R3 open"</param>
 public sealed record NamedFault(
     string Fault, ImmutableArray<string> Parts, ImmutableArray<string> Pins, ImmutableArray<string> Nodes, ImmutableArray<int> Lines,
-    double? Value, Unit? Unit, double? NearestPreferred, string Text);
+    double? Value, Unit? Unit, double? NearestPreferred, string Text)
+{
+    /// <summary>The second fault where two are needed to explain the readings.</summary>
+    public NamedFault? With { get; init; }
+}

@@ -21,7 +21,8 @@ internal sealed record Fault(
     public bool IsBroad { get; init; }
 
     /// <summary>Logarithm of prior times evidence, all names together.</summary>
-    public double LogWeight { get; } = LogSum(LogRates) + Evidence.LogEvidence;
+    public double LogWeight => LogRate + Evidence.LogEvidence;
 
-    private static double LogSum(ImmutableArray<double> logs) => Math.Log(logs.Sum(Math.Exp));
+    /// <summary>Logarithm of the prior rate, all names together.</summary>
+    public double LogRate => Math.Log(LogRates.Sum(Math.Exp));
 }

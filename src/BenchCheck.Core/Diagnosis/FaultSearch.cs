@@ -20,13 +20,19 @@ internal sealed class FaultSearch
     /// <summary>How far off the unexplained alternative lets a reading be, as a share of the largest reading of its kind.</summary>
     private const double UnexplainedShare = 0.3;
 
+    /// <summary>Probability that a board with one fault has a second: common practice, no source.</summary>
+    private const double PairShare = 0.1;
+
+    /// <summary>How many single faults are taken as the first of a pair.</summary>
+    private const int PairBases = 10;
+
     private static readonly ImmutableArray<double> StartsInSigma = [-1.6, -0.8, 0, 0.8, 1.6];
 
     private readonly NetworkSolver solver;
     private readonly IReadOnlyList<Probe> probes;
     private readonly IReadOnlyList<bool> hasScaleError;
     private readonly EvidenceFit fit = new();
-    private readonly List<Compiled> compiled = [];
+    private readonly List<Compiled> compiled;
     private readonly FaultRates rates;
 
     public FaultSearch(Board board, IReadOnlyList<Probe> probes, IReadOnlyList<bool> hasScaleError, NetworkSolver solver, FaultRates rates)
@@ -36,9 +42,7 @@ internal sealed class FaultSearch
         this.hasScaleError = hasScaleError;
         this.rates = rates;
         Healthy = new BoardModel(board, probes, hasScaleError, solver);
-        foreach (var hypothesis in FaultCatalogue.Of(board)) compiled.Add(Compile(hypothesis));
-        var places = compiled.SelectMany(c => c.Hypothesis.Names).GroupBy(n => n.Kind).ToDictionary(g => g.Key, g => g.Count());
-        foreach (var c in compiled) c.LogRates = [.. c.Hypothesis.Names.Select(n => Math.Log(rates[n.Kind] / places[n.Kind]))];
+        compiled = CompileAll(board);
     }
 
     public BoardModel Healthy { get; }
@@ -69,6 +73,53 @@ internal sealed class FaultSearch
         }
 
         return faults;
+    }
+
+    /// <summary>Two faults together, built on the most promising single ones: for boards that no single fault explains.</summary>
+    /// <param name="singles">what <see cref="Find"/> returned for the same readings</param>
+    public List<Fault> FindPairs(List<Fault> singles, double[] measured, double[] noise, IReadOnlyList<int> lines, CancellationToken cancel)
+    {
+        var total = singles.Sum(f => Math.Exp(f.LogRate));
+        var pairs = new List<Fault>();
+        var bases = singles.Where(f => f.WrongReading < 0 && !f.IsBroad && f.Named[0].Fault != FaultKind.None)
+            .OrderBy(f => f.Evidence.ChiSquared).DistinctBy(f => f.Named[0].Text).Take(PairBases).ToArray();
+        var best = bases.Length == 0 ? 0 : bases[0].Evidence.ChiSquared;
+        foreach (var first in bases)
+        {
+            var shift = first.LogRate - Math.Log(total) + Math.Log(PairShare);
+            foreach (var c in CompileAll(first.Model.Board))
+            {
+                cancel.ThrowIfCancellationRequested();
+                if (Overlaps(first.Named[0], c.Hypothesis)) continue;
+                var evidence = Fit(c, measured, noise, best + Hopeless);
+                if (double.IsNegativeInfinity(evidence.LogEvidence)) continue;
+                best = Math.Min(best, evidence.ChiSquared);
+                pairs.Add(Joined(first, Record(c, evidence, noise), shift));
+            }
+
+            pairs.AddRange(new ReadingErrors(probes, lines, fit).Of(first.Model, measured, noise, Math.Log(rates[FaultKind.ReadingError]))
+                .Select(error => Joined(first, error, shift)));
+        }
+
+        // A pair and the same pair found the other way round are one.
+        return [.. pairs.GroupBy(f => string.Join('\n', new[] { f.Named[0].Text, f.Named[0].With!.Text }.Order(StringComparer.Ordinal))).Select(g => g.MaxBy(f => f.LogWeight)!)];
+    }
+
+    private static bool Overlaps(NamedFault first, FaultHypothesis second) =>
+        second.Names.Any(n => n.Parts.Any(p => first.Parts.Contains(p) || p.Contains(' ', StringComparison.Ordinal)) || n.Nodes.Any(x => x.Contains(' ', StringComparison.Ordinal)));
+
+    private static Fault Joined(Fault first, Fault second, double shift) => second with
+    {
+        LogRates = [.. second.LogRates.Select(r => r + shift)],
+        Named = [.. second.Named.Select(n => n with { With = first.Named[0], Text = $"{first.Named[0].Text} and {n.Text}" })],
+    };
+
+    private List<Compiled> CompileAll(Board board)
+    {
+        List<Compiled> all = [.. FaultCatalogue.Of(board).Select(Compile)];
+        var places = all.SelectMany(c => c.Hypothesis.Names).GroupBy(n => n.Kind).ToDictionary(g => g.Key, g => g.Count());
+        foreach (var c in all) c.LogRates = [.. c.Hypothesis.Names.Select(n => Math.Log(rates[n.Kind] / places[n.Kind]))];
+        return all;
     }
 
     private Fault? Alternative(string kind, string words, double[] measured, double[] noise)

@@ -12,6 +12,9 @@ namespace BenchCheck.Core.Diagnosis;
 /// </summary>
 public sealed class Reconciliation
 {
+    /// <summary>Probability of the unexplained above which pairs of faults are searched.</summary>
+    private const double PairsWorthSeeking = 0.05;
+
     private const double LeastShown = 0.002;
     private const int MostSuspects = 12;
 
@@ -49,7 +52,14 @@ public sealed class Reconciliation
         var search = SearchFor(plan);
         var (check, _) = Checker.Check(Bench, readings, plan, search.Healthy, fit, Settings);
         int[] lines = [.. readings.Readings.Select(r => r.Lines.IsDefaultOrEmpty ? 0 : r.Lines[0])];
-        var posterior = Posterior.Of(search.Find(plan.Measured, plan.Noise, lines, cancel));
+        var faults = search.Find(plan.Measured, plan.Noise, lines, cancel);
+        var posterior = Posterior.Of(faults);
+        if (posterior.Where(f => f.Fault.IsBroad).Sum(f => f.Probability) > PairsWorthSeeking)
+        {
+            faults.AddRange(search.FindPairs(faults, plan.Measured, plan.Noise, lines, cancel));
+            posterior = Posterior.Of(faults);
+        }
+
         double[] sigma = [.. Enumerable.Range(0, plan.Measured.Length).Select(plan.StandardUncertainty)];
         var groups = FaultGroup.Of(posterior.Where(f => f.Probability > 1e-6), sigma);
         var words = new SuspectWords(check, plan);

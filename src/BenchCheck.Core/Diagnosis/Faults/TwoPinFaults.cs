@@ -37,7 +37,7 @@ internal static class TwoPinFaults
 
                     break;
                 case Capacitor:
-                    var leak = new Resistor($"leak {part.Designator}", part.Nodes, Nominal.Between(30, 3e6));
+                    var leak = new Resistor(Alteration.NewName(board, $"leak {part.Designator}"), part.Nodes, Nominal.Between(30, 3e6));
                     yield return new FaultHypothesis(
                         new FaultName(FaultKind.Leaky, $"{part.Designator} leaky") { Parts = [part.Designator] },
                         board.With([], [leak]), new FreeNumber(leak.Designator, ParameterKind.Resistance, double.NaN));
