@@ -10,15 +10,17 @@ namespace BenchCheck.Core.Checking;
 /// </remarks>
 public sealed class BoardFit
 {
-    private BoardFit(BoardModel model, Evidence evidence, EvidenceFit fit)
+    private BoardFit(BoardModel model, ReadingPlan plan, EvidenceFit fit)
     {
         Model = model;
-        Evidence = evidence;
-        Phi = fit.Phi.ToArray();
-        Fitted = fit.Predicted.ToArray();
         var p = model.Parameters.Length;
+        Phi = fit.Phi.ToArray();
+        Stacked = new StackedFit(model, plan.Measured, plan.Noise);
+        Summary = Stacked.Minimise(Phi);
         Covariance = new double[p * p];
-        fit.Posterior(p, Covariance);
+        Stacked.Covariance(Covariance);
+        Fitted = new double[model.ReadingCount];
+        model.Predict(Phi, Fitted, []);
         NormalisedResiduals = Normalised(fit);
         PriorScores = Scores(fit, p);
 
@@ -33,7 +35,13 @@ public sealed class BoardFit
 
     public BoardModel Model { get; }
 
-    public Evidence Evidence { get; }
+    /// <summary>Minimum of Σ (y − f)²/u² + Σ (φ − φ₀)²/σ².</summary>
+    public double ChiSquared => 2 * Summary.Cost;
+
+    internal StackedFit Stacked { get; }
+
+    /// <summary>How the fit went and why it stopped.</summary>
+    internal LeastSquaresSummary Summary { get; }
 
     /// <summary>Fitted φ.</summary>
     public double[] Phi { get; }
@@ -41,7 +49,7 @@ public sealed class BoardFit
     /// <summary>φ before the readings.</summary>
     public double[] Start { get; }
 
-    /// <summary>Posterior covariance of φ, p×p.</summary>
+    /// <summary>Posterior covariance of φ, p×p; infinite on the diagonal, NaN beside it, where neither the list nor the readings determine a parameter.</summary>
     public double[] Covariance { get; }
 
     /// <summary>f(φ) after the fit.</summary>
@@ -68,7 +76,7 @@ public sealed class BoardFit
         model.Forget();
         var evidence = UnknownStarts.Fit(model, plan, fit);
         if (double.IsInfinity(evidence.ChiSquared)) throw new NoOperatingStateException("the board as drawn has no operating state");
-        return new BoardFit(model, evidence, fit);
+        return new BoardFit(model, plan, fit);
     }
 
     /// <summary>Variance that the part tolerances give the prediction of a reading, without the meter.</summary>

@@ -19,7 +19,7 @@ internal static class Checker
         var unknowns = model.Parameters.Count(p => p.IsUnknown);
         var degrees = Math.Max(0, plan.Measured.Length - unknowns);
         var informative = fit.NormalisedResiduals.Concat(fit.PriorScores.Take(model.BoardParameterCount).Where(s => s != 0));
-        var pValue = VerdictRule.PValue(fit.Evidence.ChiSquared, degrees, informative);
+        var pValue = VerdictRule.PValue(fit.ChiSquared, degrees, informative);
         var verdict = degrees == 0 ? BoardVerdict.Undecided : VerdictRule.Verdict(pValue, alpha);
         var results = ReadingResults(readings, plan, fit, settings);
         var estimates = Estimates.Of(fit, settings.Confidence);
@@ -32,7 +32,7 @@ internal static class Checker
             Serial = readings.Serial,
             Verdict = verdict,
             Reason = Reason(verdict, degrees, pValue, settings.Confidence, results),
-            ChiSquared = fit.Evidence.ChiSquared,
+            ChiSquared = fit.ChiSquared,
             DegreesOfFreedom = degrees,
             PValue = pValue,
             Readings = results,
@@ -43,7 +43,7 @@ internal static class Checker
             Dissipation = Dissipation(bench.Board, points),
             Cautions = Cautions.For(volts, place),
             Assumed = bench.Assumed,
-            Remarks = fit.Evidence.Converged ? [] : ["The fit stopped before it stood still: read the estimates with care."],
+            Remarks = fit.Summary.Converged ? [] : [$"The fit stopped before it stood still ({fit.Summary}): read the estimates with care."],
         };
         return (result, fit);
     }

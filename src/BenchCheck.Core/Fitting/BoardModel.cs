@@ -64,6 +64,9 @@ public sealed class BoardModel
 
     internal NetworkSolver Solver => solver;
 
+    /// <summary>The parameters as an array, for loops that must not copy.</summary>
+    internal ReadOnlySpan<FitParameter> Fitted => fitted;
+
     public Board Board { get; }
 
     public ParameterTable Table { get; }

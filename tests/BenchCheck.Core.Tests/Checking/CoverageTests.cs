@@ -64,7 +64,7 @@ public class CoverageTests
             }
 
             var p = VerdictRule.PValue(
-                result.Evidence.ChiSquared, measured.Length, result.NormalisedResiduals.Concat(result.PriorScores.Take(model.BoardParameterCount).Where(s => s != 0)));
+                result.ChiSquared, measured.Length, result.NormalisedResiduals.Concat(result.PriorScores.Take(model.BoardParameterCount).Where(s => s != 0)));
             if (VerdictRule.Verdict(p, 0.05) == BoardVerdict.Disagrees) alarms++;
         }
 
