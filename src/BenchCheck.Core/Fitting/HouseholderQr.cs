@@ -80,20 +80,6 @@ internal static class HouseholderQr
         }
     }
 
-    /// <summary>Forms the orthonormal columns Q₁ that span A, m×n, from the factors; needs m ≥ n.</summary>
-    /// <param name="work">m elements of scratch</param>
-    public static void FormQ(ReadOnlySpan<double> qr, int rows, int columns, ReadOnlySpan<double> tau, Span<double> q, Span<double> work)
-    {
-        var column = work[..rows];
-        for (var j = 0; j < columns; j++)
-        {
-            column.Clear();
-            column[j] = 1;
-            Apply(qr, rows, columns, tau, column);
-            for (var i = 0; i < rows; i++) q[i * columns + j] = column[i];
-        }
-    }
-
     /// <summary>Makes the reflection that turns column k, from row k down, into its first element alone, and returns that element R_kk.</summary>
     private static double Reflector(Span<double> a, int rows, int columns, int k, double norm, out double tau)
     {

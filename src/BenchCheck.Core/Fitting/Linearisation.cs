@@ -111,11 +111,25 @@ internal sealed class Linearisation
         }
     }
 
-    /// <summary>Forms Q₁, m×n, whose leading <see cref="Rank"/> columns span J; only straight after <see cref="Factor"/>, and with m ≥ n.</summary>
+    /// <summary>
+    /// Redundancy number of each residual, m elements: 1 − h_i with h the diagonal of J (JᵀJ)⁻¹ Jᵀ, the variance of the residual left
+    /// by the fit against the variance of the reading. Only straight after <see cref="Factor"/>.
+    /// </summary>
+    /// <remarks>Summed over the columns of Q that do not span J, so that a number near zero keeps its digits. Source: Baarda, A testing procedure for use in geodetic networks (1968).</remarks>
     /// <param name="work">m elements of scratch</param>
-    public void FormQ(Span<double> q, Span<double> work) => HouseholderQr.FormQ(Jacobian, Rows, Columns, _tau, q, work);
+    public void RedundancyNumbers(Span<double> numbers, Span<double> work)
+    {
+        numbers.Clear();
+        for (var k = Rank; k < Rows; k++)
+        {
+            work.Clear();
+            work[k] = 1;
+            HouseholderQr.Apply(Jacobian, Rows, Columns, _tau, work);
+            for (var i = 0; i < Rows; i++) numbers[i] += work[i] * work[i];
+        }
+    }
 
-    /// <summary>‖R_ₙᵀ Qᵀ r‖, the length of the gradient in the scale of z.</summary>
+    /// <summary>‖Rᵀ Qᵀ r‖, the length of the gradient in the scale of z.</summary>
     public double ScaledGradient()
     {
         var n = Columns;

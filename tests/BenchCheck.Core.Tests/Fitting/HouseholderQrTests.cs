@@ -31,10 +31,14 @@ public class HouseholderQrTests
     public void Q_has_orthonormal_columns_and_applying_it_transposed_undoes_it() => Matrices.Sample(m =>
     {
         var (qr, tau, _, _) = Factor(m.A, m.Rows, m.Columns);
-        var q = new double[m.Rows * m.Columns];
-        HouseholderQr.FormQ(qr, m.Rows, m.Columns, tau, q, new double[m.Rows]);
-        var product = Dense(q, m.Rows, m.Columns).TransposeThisAndMultiply(Dense(q, m.Rows, m.Columns));
-        Assert.True((product - Matrix<double>.Build.DenseIdentity(m.Columns)).L2Norm() < 1e-13 * m.Rows);
+        var q = Matrix<double>.Build.DenseOfColumnArrays(Enumerable.Range(0, m.Rows).Select(k =>
+        {
+            var column = new double[m.Rows];
+            column[k] = 1;
+            HouseholderQr.Apply(qr, m.Rows, m.Columns, tau, column);
+            return column;
+        }));
+        Assert.True((q.TransposeThisAndMultiply(q) - Matrix<double>.Build.DenseIdentity(m.Rows)).L2Norm() < 1e-13 * m.Rows);
 
         var b = m.A.Take(m.Rows).ToArray();
         var turned = (double[])b.Clone();

@@ -1,0 +1,27 @@
+using MathNet.Numerics.Distributions;
+
+namespace BenchCheck.Core.Fitting;
+
+/// <summary>The largest normalised residual against what the largest of so many standard normal numbers may be.</summary>
+/// <remarks>
+/// Source: Handschin, Schweppe, Kohlas, Fiechter, IEEE Trans. PAS-94 (1975) 329-337; Mah and Tamhane, AIChE J. 28 (1982) 828-830 for the limit,
+/// after Šidák, J. Amer. Statist. Assoc. 62 (1967) 626: it holds the false alarms of all readings together at or below α.
+/// </remarks>
+internal static class LargestResidualTest
+{
+    /// <summary>Index of the residual largest in size, −1 when none is a number.</summary>
+    public static int Worst(ReadOnlySpan<double> normalisedResiduals)
+    {
+        var worst = -1;
+        for (var i = 0; i < normalisedResiduals.Length; i++)
+        {
+            if (double.IsNaN(normalisedResiduals[i])) continue;
+            if (worst < 0 || Math.Abs(normalisedResiduals[i]) > Math.Abs(normalisedResiduals[worst])) worst = i;
+        }
+
+        return worst;
+    }
+
+    /// <summary>Size that the largest of <paramref name="count"/> independent standard normal numbers exceeds with probability <paramref name="alpha"/>; correlated ones exceed it less often.</summary>
+    public static double Limit(int count, double alpha) => -Normal.InvCDF(0, 1, 0.5 * (1 - Math.Pow(1 - alpha, 1.0 / count)));
+}
