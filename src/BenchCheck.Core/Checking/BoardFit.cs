@@ -79,20 +79,6 @@ public sealed class BoardFit
         return new BoardFit(model, plan, fit);
     }
 
-    /// <summary>Variance that the part tolerances give the prediction of a reading, without the meter.</summary>
-    public double ToleranceVariance(int reading)
-    {
-        var sum = 0.0;
-        for (var i = 0; i < Model.BoardParameterCount; i++)
-        {
-            if (Model.Parameters[i].IsUnknown) continue;
-            var term = PriorJacobian[reading * Model.Parameters.Length + i] * Model.Parameters[i].Sigma;
-            sum += term * term;
-        }
-
-        return sum;
-    }
-
     private static double[] Normalised(EvidenceFit fit)
     {
         var m = fit.Innovation.Length;

@@ -10,6 +10,9 @@ public sealed record CheckResult
 {
     public required string BoardTitle { get; init; }
 
+    /// <summary>Node that voltages are counted against unless a reading says otherwise.</summary>
+    public required string Reference { get; init; }
+
     public string? Serial { get; init; }
 
     public required BoardVerdict Verdict { get; init; }

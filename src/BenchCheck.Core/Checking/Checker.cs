@@ -29,6 +29,7 @@ internal static class Checker
         var result = new CheckResult
         {
             BoardTitle = bench.Board.Title,
+            Reference = bench.Board.Reference,
             Serial = readings.Serial,
             Verdict = verdict,
             Reason = Reason(verdict, degrees, pValue, settings.Confidence, results),
@@ -39,8 +40,8 @@ internal static class Checker
             Unmeasured = Unmeasured(bench, plan, fit, conditions, settings),
             Parameters = [.. estimates.Where(e => e.Kind.IsReported)],
             Correlated = Estimates.Correlated(fit, estimates),
-            States = [.. points.SelectMany(p => States(bench.Board, p))],
-            Dissipation = Dissipation(bench.Board, points),
+            States = [.. points.SelectMany(p => OperatingReport.States(bench.Board, p))],
+            Dissipation = OperatingReport.Dissipation(bench.Board, points),
             Cautions = Cautions.For(volts, place),
             Assumed = bench.Assumed,
             Remarks = fit.Summary.Converged ? [] : [$"The fit stopped before it stood still ({fit.Summary}): read the estimates with care."],
@@ -53,45 +54,29 @@ internal static class Checker
         var k = Normal.InvCDF(0, 1, (1 + settings.Confidence) / 2);
         var m = plan.Measured.Length;
         var limit = m == 0 ? 1 : VerdictRule.SidakLimit(1 - settings.Confidence, m) / k;
+        var p = fit.Model.Parameters.Length;
+        var bands = PredictedBand.Of(fit.Model, fit.Start, fit.Predicted, fit.PriorJacobian, settings);
         var results = ImmutableArray.CreateBuilder<ReadingResult>(m);
         for (var i = 0; i < m; i++)
         {
-            var tolerance = Math.Sqrt(fit.ToleranceVariance(i));
+            var tolerance = Math.Sqrt(PredictedBand.Variance(fit.Model, fit.PriorJacobian.AsSpan(i * p, p)));
             var uncertainty = plan.StandardUncertainty(i);
             var difference = plan.Measured[i] - fit.Predicted[i];
             var en = difference / (k * Math.Sqrt(tolerance * tolerance + uncertainty * uncertainty));
             var size = Math.Abs(en);
             results.Add(new ReadingResult(
-                readings.Readings[i], uncertainty, fit.Predicted[i], fit.Predicted[i] - k * tolerance, fit.Predicted[i] + k * tolerance, difference, en,
+                readings.Readings[i], uncertainty, fit.Predicted[i], bands[i].Low, bands[i].High, difference, en,
                 size <= 1 ? ReadingVerdict.In : size <= limit ? ReadingVerdict.Doubtful : ReadingVerdict.Out, fit.Fitted[i], fit.NormalisedResiduals[i])
             {
-                Influences = Influences(fit, i),
+                Influences = Checking.Influences.Of(fit.Model, fit.PriorJacobian.AsSpan(i * p, p)),
             });
         }
 
         return results.MoveToImmutable();
     }
 
-    private static ImmutableArray<Influence> Influences(BoardFit fit, int reading)
-    {
-        var total = fit.ToleranceVariance(reading);
-        if (!(total > 0)) return [];
-        var p = fit.Model.Parameters.Length;
-        return
-        [
-            .. Enumerable.Range(0, fit.Model.BoardParameterCount)
-                .Where(i => !fit.Model.Parameters[i].IsUnknown)
-                .Select(i => (Parameter: fit.Model.Parameters[i], Slope: fit.PriorJacobian[reading * p + i]))
-                .Select(x => new Influence(
-                    x.Parameter.Owner, x.Parameter.Kind, x.Slope * x.Slope * x.Parameter.Sigma * x.Parameter.Sigma / total, x.Slope * 0.01))
-                .Where(x => x.Share > 1e-4)
-                .OrderByDescending(x => x.Share),
-        ];
-    }
-
     private static ImmutableArray<UnmeasuredNode> Unmeasured(Bench bench, ReadingPlan plan, BoardFit fit, Condition[] conditions, CheckSettings settings)
     {
-        var k = Normal.InvCDF(0, 1, (1 + settings.Confidence) / 2);
         var meter = bench.Meters[0];
         var places = conditions.Where(c => !c.SuppliesRemoved)
             .SelectMany(c => bench.Board.Nodes.Skip(1).Select(n => new Probe(c.Name, ReadingQuantity.Voltage, n, null, meter, 1)))
@@ -103,39 +88,9 @@ internal static class Checker
         var (predicted, fitted, jacobian) = (new double[places.Length], new double[places.Length], new double[places.Length * p]);
         model.Predict(fit.Phi.AsSpan(0, p), fitted, []);
         model.Predict(fit.Start.AsSpan(0, p), predicted, jacobian);
-        return [.. places.Select((place, i) =>
-        {
-            var variance = 0.0;
-            for (var j = 0; j < p; j++)
-            {
-                if (!model.Parameters[j].IsUnknown) variance += Math.Pow(jacobian[i * p + j] * model.Parameters[j].Sigma, 2);
-            }
-
-            var half = k * Math.Sqrt(variance);
-            return new UnmeasuredNode(place.Condition, place.At, predicted[i], predicted[i] - half, predicted[i] + half, fitted[i]);
-        })];
+        var bands = PredictedBand.Of(model, fit.Start.AsSpan(0, p), predicted, jacobian, settings);
+        return [.. places.Select((place, i) => new UnmeasuredNode(place.Condition, place.At, predicted[i], bands[i].Low, bands[i].High, fitted[i]))];
     }
-
-    private static IEnumerable<DeviceState> States(Board board, OperatingPoint point)
-    {
-        foreach (var part in board.Parts)
-        {
-            if (point.State(part) is not { } state) continue;
-            string? remark = null;
-            if (part is Transistor q && state == "saturated")
-                remark = string.Create(System.Globalization.CultureInfo.InvariantCulture, $"its ratio of currents, {point.CurrentRatio(q):G2}, is only a lower bound of its gain");
-            yield return new DeviceState(part.Designator, point.Condition.Name, state, remark);
-        }
-    }
-
-    private static ImmutableArray<Dissipation> Dissipation(Board board, OperatingPoint[] points) => points.Length == 0 ? [] :
-    [
-        .. board.Parts.Where(p => p is not (Supply or CurrentSource or Capacitor)).Select(part =>
-        {
-            var worst = points.MaxBy(p => p.Watts(part))!;
-            return new Dissipation(part.Designator, worst.Condition.Name, worst.Watts(part), part.RatedWatts);
-        }),
-    ];
 
     private static (double Volts, string Place) Highest(Board board, OperatingPoint[] points, ReadingSet readings)
     {

@@ -153,6 +153,14 @@ public sealed class NetworkSolver
         return volts * scale;
     }
 
+    /// <summary>Resistance between an unknown and the reference on the network last solved, every port at its slope.</summary>
+    public double TheveninOhms(int unknown)
+    {
+        Read(new Measurement(unknown, -1), new double[Math.Max(1, theta.Length)]);
+        // The adjoint of the reading itself: λ at the node is the voltage there for one ampere into it.
+        return lambda[unknown];
+    }
+
     private void Differentiate(
         in Measurement m, ReadOnlySpan<double> loaded, ReadOnlySpan<double> view, double volts, double share, double scale, Span<double> gradient)
     {

@@ -17,8 +17,11 @@ public sealed class OperatingPoint
     private readonly double[] ports;
     private readonly double[] theta;
 
-    private OperatingPoint(Network network, double[] x, double[] ports, double[] theta)
+    private readonly double[] thevenin;
+
+    private OperatingPoint(Network network, double[] x, double[] ports, double[] theta, double[] thevenin)
     {
+        this.thevenin = thevenin;
         this.network = network;
         this.x = x;
         this.ports = ports;
@@ -27,8 +30,36 @@ public sealed class OperatingPoint
 
     public Condition Condition => network.Condition;
 
-    internal static OperatingPoint Of(Network network, NetworkSolver solver, ReadOnlySpan<double> theta) =>
-        new(network, solver.Unknowns.ToArray(), solver.PortCurrents.ToArray(), theta.ToArray());
+    internal static OperatingPoint Of(Network network, NetworkSolver solver, ReadOnlySpan<double> theta)
+    {
+        var (x, ports) = (solver.Unknowns.ToArray(), solver.PortCurrents.ToArray());
+        var thevenin = new double[network.NodeCount];
+        for (var i = 0; i < thevenin.Length; i++) thevenin[i] = solver.TheveninOhms(i);
+        return new OperatingPoint(network, x, ports, theta.ToArray(), thevenin);
+    }
+
+    /// <summary>Resistance looking into a node against the reference, every device at the slope of its state.</summary>
+    public double TheveninOhms(string node) => network.IndexOf(node) is >= 0 and var i ? thevenin[i] : 0;
+
+    /// <summary>Currents worth a line: two-pin parts from their first pin to their second, the collector and base of transistors.</summary>
+    public IEnumerable<(string At, double Amperes)> Currents()
+    {
+        foreach (var part in network.Parts)
+        {
+            if (part is Transistor q)
+            {
+                var (forward, reverse) = (JunctionAmperes(part, JunctionRole.BaseEmitter), JunctionAmperes(part, JunctionRole.BaseCollector));
+                var (gain, reverseGain) = Gains(part);
+                var sign = q.IsNpn ? 1 : -1;
+                yield return (q.JointName(Transistor.Collector), sign * (forward - reverse - reverse / reverseGain));
+                yield return (q.JointName(Transistor.Base), sign * (forward / gain + reverse / reverseGain));
+            }
+            else if (Through(part) is { } amperes)
+            {
+                yield return (part.Designator, amperes);
+            }
+        }
+    }
 
     /// <summary>Voltage of a node against the reference.</summary>
     public double Volts(string node) => Volts(network.IndexOf(node));
@@ -80,6 +111,23 @@ public sealed class OperatingPoint
         var (gain, reverseGain) = Gains(part);
         var baseAmperes = forward / gain + reverse / reverseGain;
         return forward > OffAmperes ? (forward - reverse - reverse / reverseGain) / baseAmperes : double.NaN;
+    }
+
+    /// <summary>Current of a two-pin part, into its first pin; null for a part that carries none at DC.</summary>
+    private double? Through(Part part)
+    {
+        var index = network.Parts.IndexOf(part);
+        foreach (ref readonly var e in network.Conductors.AsSpan())
+        {
+            if (e.Part == index) return (Volts(e.From) - Volts(e.To)) / e.Ohms.Value(theta);
+        }
+
+        foreach (ref readonly var e in network.Voltages.AsSpan())
+        {
+            if (e.Part == index) return x[e.Row];
+        }
+
+        return part is Diode ? JunctionAmperes(part, JunctionRole.Forward) - JunctionAmperes(part, JunctionRole.Breakdown) : null;
     }
 
     private string TransistorState(Part part)
