@@ -1,5 +1,6 @@
 using BenchCheck.Core.Boards;
 using BenchCheck.Core.Equations;
+using BenchCheck.Core.Metering;
 using BenchCheck.Core.Quantities;
 
 namespace BenchCheck.Core.Fitting;
@@ -40,7 +41,7 @@ public sealed record FitParameter(
         {
             var half = (nominal.High - nominal.Low) / 2;
             return half > 0
-                ? new FitParameter(entry.Part.Designator, entry.Kind, entry.Condition, nominal, thetaIndex, false, nominal.Value, half / Math.Sqrt(3))
+                ? new FitParameter(entry.Part.Designator, entry.Kind, entry.Condition, nominal, thetaIndex, false, nominal.Value, StandardUncertainty.Rectangular(half))
                 : null;
         }
 
@@ -48,7 +49,7 @@ public sealed record FitParameter(
         var low = Math.Max(nominal.Low, nominal.Value / 10);
         var width = Math.Log(nominal.High / low);
         return width > 0
-            ? new FitParameter(entry.Part.Designator, entry.Kind, entry.Condition, nominal, thetaIndex, true, Math.Log(nominal.Value), width / (2 * Math.Sqrt(3)))
+            ? new FitParameter(entry.Part.Designator, entry.Kind, entry.Condition, nominal, thetaIndex, true, Math.Log(nominal.Value), StandardUncertainty.Rectangular(width / 2))
             : null;
     }
 

@@ -24,13 +24,13 @@ public sealed record Probe(string Condition, ReadingQuantity Quantity, string At
     }
 
     /// <summary>Standard uncertainty of the fixed part of the accuracy: rectangular of half-width counts · resolution (JCGM 100:2008, 4.3.7).</summary>
-    public double CountsUncertainty => Function.Counts * Range / Meter.FullScaleCounts / Math.Sqrt(3);
+    public double CountsUncertainty => StandardUncertainty.Rectangular(Function.Counts * Range / Meter.FullScaleCounts);
 
     /// <summary>
     /// Standard uncertainty of the scale error, as a fraction of the reading: rectangular. It is common to all readings of one meter,
     /// function and range (JCGM 100:2008, F.1.2).
     /// </summary>
-    public double ScaleUncertainty => Function.ReadingFraction / Math.Sqrt(3);
+    public double ScaleUncertainty => StandardUncertainty.Rectangular(Function.ReadingFraction);
 
     /// <summary>Name of what shares the scale error.</summary>
     public string ScaleGroupName => $"{Meter.Name}, {Quantity.Name()}, {EngineeringNotation.Format(Range, Quantity.Unit())} range";
