@@ -4,7 +4,7 @@ namespace BenchCheck.Core.Quantities;
 
 /// <summary>Numbers as an engineer writes them: three-step prefixes, and digits no finer than the uncertainty.</summary>
 /// <remarks>
-/// Everything finite that is written here is read back by QuantityText. An uncertainty has two significant digits and the value
+/// Everything finite that is written here is read back by <see cref="QuantityText"/>. An uncertainty has two significant digits and the value
 /// the same last decimal (JCGM 100:2008, 7.2.6). Negative zero is zero; NaN is "unknown"; beyond the prefixes plain powers of ten stand.
 /// </remarks>
 public static class EngineeringNotation
