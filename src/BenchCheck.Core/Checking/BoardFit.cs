@@ -5,8 +5,8 @@ namespace BenchCheck.Core.Checking;
 
 /// <summary>The healthy board fitted to the readings, and its prediction before them.</summary>
 /// <remarks>
-/// Residuals after the fit: with S the covariance that the model gives the readings and d their innovation, the normalised residual of reading i
-/// is (S⁻¹ d)ᵢ / √(S⁻¹)ᵢᵢ, which is the residual over its own standard deviation (Handschin et al., IEEE Trans. PAS-94 (1975)).
+/// A tolerance is a reading of the part by its maker: the residual of that row, over its own standard deviation, tells how far the readings
+/// pull the part from its nominal value, as the residual of a reading tells how far the rest disagrees with it.
 /// </remarks>
 public sealed class BoardFit
 {
@@ -21,8 +21,10 @@ public sealed class BoardFit
         Stacked.Covariance(Covariance);
         Fitted = new double[model.ReadingCount];
         model.Predict(Phi, Fitted, []);
-        NormalisedResiduals = Normalised(fit);
-        PriorScores = Scores(fit, p);
+        var normalised = Stacked.Statistics(Phi).NormalisedResiduals;
+        // The fit's residual is fitted − measured.
+        NormalisedResiduals = [.. normalised.Take(model.ReadingCount).Select(r => -r)];
+        PriorScores = Pulls(model, normalised.AsSpan(model.ReadingCount..));
 
         // Before the readings: nominal values, except that what the list leaves unknown stands at its estimate.
         Start = new double[p];
@@ -79,40 +81,16 @@ public sealed class BoardFit
         return new BoardFit(model, plan, fit);
     }
 
-    private static double[] Normalised(EvidenceFit fit)
+    /// <summary>One a parameter, in the order of φ; zero for an unknown, which is pulled from nothing.</summary>
+    private static double[] Pulls(BoardModel model, ReadOnlySpan<double> normalised)
     {
-        var m = fit.Innovation.Length;
-        var result = new double[m];
-        var column = new double[m];
-        for (var i = 0; i < m; i++)
+        var result = new double[model.Parameters.Length];
+        var row = 0;
+        for (var k = 0; k < result.Length; k++)
         {
-            Array.Clear(column);
-            column[i] = 1;
-            Cholesky.Solve(fit.CovarianceFactor, m, column);
-            // S⁻¹ᵢᵢ times the reading's own noise is the share of the residual that the fit leaves free.
-            result[i] = column[i] > 0 ? fit.Innovation[i] / Math.Sqrt(column[i]) : double.NaN;
-        }
-
-        return result;
-    }
-
-    private static double[] Scores(EvidenceFit fit, int p)
-    {
-        var m = fit.Innovation.Length;
-        var result = new double[p];
-        var column = new double[m];
-        for (var k = 0; k < p; k++)
-        {
-            var pull = 0.0;
-            for (var i = 0; i < m; i++)
-            {
-                column[i] = fit.Jacobian[i * p + k];
-                pull += column[i] * fit.Innovation[i];
-            }
-
-            Cholesky.SolveLower(fit.CovarianceFactor, m, column);
-            var size = Math.Sqrt(LuFactor.Dot(column, column));
-            result[k] = size * Math.Sqrt(fit.PriorVariance[k]) > 1e-6 ? pull / size : 0;
+            if (model.Parameters[k].IsUnknown) continue;
+            var pull = normalised[row++];
+            result[k] = double.IsNaN(pull) ? 0 : pull;
         }
 
         return result;

@@ -33,6 +33,15 @@ internal sealed class StackedFit
     /// <summary>p×p covariance at the result.</summary>
     public void Covariance(Span<double> covariance) => workspace.Covariance(covariance);
 
+    /// <summary>Uncertainties and normalised residuals at φ; the residuals of the readings come first, then those of the parameters with a tolerance.</summary>
+    public LeastSquaresStatistics Statistics(ReadOnlySpan<double> phi)
+    {
+        var residuals = new double[rows];
+        var jacobian = new double[rows * phi.Length];
+        Stack(phi, residuals, jacobian);
+        return LeastSquaresStatistics.Of(jacobian, residuals, phi.Length);
+    }
+
     /// <summary>Profiles of single parameters around the result.</summary>
     public ProfileInterval Profile(ReadOnlySpan<double> phi, double cost) => new(Stack, rows, phi, cost, LeastSquaresTolerances.Usual);
 
