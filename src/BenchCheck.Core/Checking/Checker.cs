@@ -4,7 +4,6 @@ using BenchCheck.Core.Equations;
 using BenchCheck.Core.Fitting;
 using BenchCheck.Core.Metering;
 using BenchCheck.Core.Quantities;
-using MathNet.Numerics.Distributions;
 
 namespace BenchCheck.Core.Checking;
 
@@ -51,9 +50,9 @@ internal static class Checker
 
     private static ImmutableArray<ReadingResult> ReadingResults(ReadingSet readings, ReadingPlan plan, BoardFit fit, CheckSettings settings)
     {
-        var k = Normal.InvCDF(0, 1, (1 + settings.Confidence) / 2);
+        var k = CoverageFactor.Normal(settings.Confidence);
         var m = plan.Measured.Length;
-        var limit = m == 0 ? 1 : VerdictRule.SidakLimit(1 - settings.Confidence, m) / k;
+        var limit = m == 0 ? 1 : LargestResidualTest.Limit(m, 1 - settings.Confidence) / k;
         var p = fit.Model.Parameters.Length;
         var bands = PredictedBand.Of(fit.Model, fit.Start, fit.Predicted, fit.PriorJacobian, settings);
         var results = ImmutableArray.CreateBuilder<ReadingResult>(m);

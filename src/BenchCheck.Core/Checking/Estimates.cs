@@ -1,7 +1,7 @@
 using System.Collections.Immutable;
 using BenchCheck.Core.Boards;
 using BenchCheck.Core.Fitting;
-using MathNet.Numerics.Distributions;
+using BenchCheck.Core.Metering;
 
 namespace BenchCheck.Core.Checking;
 
@@ -27,7 +27,7 @@ internal static class Estimates
 
     public static ImmutableArray<Estimate> Of(BoardFit fit, double confidence)
     {
-        var k = Normal.InvCDF(0, 1, (1 + confidence) / 2);
+        var k = CoverageFactor.Normal(confidence);
         var p = fit.Model.Parameters.Length;
         var profile = new Lazy<ProfileInterval>(() => fit.Stacked.Profile(fit.Phi, fit.Summary.Cost));
         return [.. fit.Model.Parameters.Select((parameter, i) => One(parameter, i, fit.Phi[i], Math.Sqrt(Math.Max(0, fit.Covariance[i * p + i])), k, profile))];

@@ -1,6 +1,6 @@
 using BenchCheck.Core.Equations;
 using BenchCheck.Core.Fitting;
-using MathNet.Numerics.Distributions;
+using BenchCheck.Core.Metering;
 using MathNet.Numerics.Statistics;
 
 namespace BenchCheck.Core.Checking;
@@ -31,7 +31,7 @@ public readonly record struct PredictedBand(double Low, double High)
     /// <summary>JCGM 100:2008, 5.1.2, with the coverage factor of a normal distribution.</summary>
     private static PredictedBand[] FirstOrder(BoardModel model, ReadOnlySpan<double> predicted, ReadOnlySpan<double> jacobian, double confidence)
     {
-        var k = Normal.InvCDF(0, 1, (1 + confidence) / 2);
+        var k = CoverageFactor.Normal(confidence);
         var p = model.Parameters.Length;
         var bands = new PredictedBand[predicted.Length];
         for (var i = 0; i < bands.Length; i++)

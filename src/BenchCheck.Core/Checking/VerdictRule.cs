@@ -1,4 +1,4 @@
-using MathNet.Numerics.Distributions;
+using BenchCheck.Core.Fitting;
 
 namespace BenchCheck.Core.Checking;
 
@@ -14,16 +14,11 @@ internal static class VerdictRule
     public static double PValue(double chiSquared, int degreesOfFreedom, IEnumerable<double> normalised)
     {
         var values = normalised.Where(double.IsFinite).Select(Math.Abs).ToArray();
-        var whole = degreesOfFreedom > 0 ? 1 - ChiSquared.CDF(degreesOfFreedom, Math.Max(0, chiSquared)) : 1;
-        var single = values.Length == 0 ? 1 : Sidak(2 * Normal.CDF(0, 1, -values.Max()), values.Length);
+        var whole = ChiSquaredTest.PValue(Math.Max(0, chiSquared), degreesOfFreedom);
+        var single = values.Length == 0 ? 1 : LargestResidualTest.PValue(values.Max(), values.Length);
         return Math.Min(1, 2 * Math.Min(whole, single));
     }
 
     public static BoardVerdict Verdict(double pValue, double alpha) =>
         pValue <= alpha ? BoardVerdict.Disagrees : pValue <= 2 * alpha ? BoardVerdict.Undecided : BoardVerdict.Agrees;
-
-    /// <summary>Limit for the largest of n independent standard normal values at risk α.</summary>
-    public static double SidakLimit(double alpha, int n) => Normal.InvCDF(0, 1, 1 - (1 - Math.Pow(1 - alpha, 1.0 / n)) / 2);
-
-    private static double Sidak(double p, int n) => p >= 1 ? 1 : 1 - Math.Exp(n * double.LogP1(-p));
 }

@@ -1,7 +1,7 @@
 using System.Collections.Immutable;
 using System.Globalization;
 using BenchCheck.Core.Checking;
-using MathNet.Numerics.Distributions;
+using BenchCheck.Core.Fitting;
 
 namespace BenchCheck.Core.Diagnosis;
 
@@ -17,7 +17,7 @@ internal sealed class SuspectWords(CheckResult check, ReadingPlan plan)
             .OrderByDescending(x => x.Weight).Select(x => x.Name).ToArray();
         var leader = group.Leader;
         var degrees = Math.Max(1, plan.Measured.Length - (leader.WrongReading >= 0 ? 1 : 0));
-        var pValue = 1 - ChiSquared.CDF(degrees, leader.Evidence.ChiSquared);
+        var pValue = ChiSquaredTest.PValue(leader.Evidence.ChiSquared, degrees);
         return new Suspect(group.Probability, names[0], leader.Evidence.ChiSquared, pValue, Sentence(names, leader, degrees), [.. names.Skip(1).Take(MostAlike)])
         {
             Explained = [.. leader.Explained],

@@ -9,17 +9,12 @@ namespace BenchCheck.Core.Fitting;
 /// </remarks>
 internal static class LargestResidualTest
 {
-    /// <summary>Index of the residual largest in size, −1 when none is a number.</summary>
-    public static int Worst(ReadOnlySpan<double> normalisedResiduals)
+    /// <summary>Probability that the largest of <paramref name="count"/> independent standard normal numbers is this large or larger in size.</summary>
+    public static double PValue(double largest, int count)
     {
-        var worst = -1;
-        for (var i = 0; i < normalisedResiduals.Length; i++)
-        {
-            if (double.IsNaN(normalisedResiduals[i])) continue;
-            if (worst < 0 || Math.Abs(normalisedResiduals[i]) > Math.Abs(normalisedResiduals[worst])) worst = i;
-        }
-
-        return worst;
+        var single = 2 * Normal.CDF(0, 1, -Math.Abs(largest));
+        // For a small probability the power loses its digits, and the sum over the numbers is as good.
+        return count * single < 1e-8 ? count * single : 1 - Math.Pow(1 - single, count);
     }
 
     /// <summary>Size that the largest of <paramref name="count"/> independent standard normal numbers exceeds with probability <paramref name="alpha"/>; correlated ones exceed it less often.</summary>

@@ -1,10 +1,12 @@
-namespace BenchCheck.Core.Fitting;
+using BenchCheck.Core.Fitting;
+
+namespace BenchCheck.Core.Tests.Fitting;
 
 /// <summary>A fitted linear model.</summary>
 /// <param name="Estimates">n parameters; zero for those beyond the rank</param>
 internal sealed record LinearFit(double[] Estimates, LeastSquaresStatistics Statistics);
 
-/// <summary>Weighted linear least squares, y = X b + e with independent e_i of standard uncertainty u_i, by QR with scaled and pivoted columns.</summary>
+/// <summary>Weighted linear least squares, y = X b + e with independent e_i of standard uncertainty u_i: one undamped step of the fit's own linearisation.</summary>
 /// <remarks>Source: Lawson and Hanson, Solving Least Squares Problems (1974), ch. 11 and 25.</remarks>
 internal static class LinearLeastSquares
 {
