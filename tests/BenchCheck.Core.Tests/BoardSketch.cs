@@ -30,10 +30,10 @@ internal sealed class BoardSketch
         Add(Bipolar(Transistor.Npn, name, collector, @base, emitter, Nominal.Between(lowGain, highGain), drop));
 
     public BoardSketch Diode(string name, string anode, string cathode, double drop = 0.65) =>
-        Add(new Diode(Boards.Diode.Plain, name, [anode, cathode], Nominal.Exactly(drop)));
+        Add(new Diode(Core.Boards.Diode.Plain, name, [anode, cathode], Nominal.Exactly(drop)));
 
     public BoardSketch Zener(string name, string anode, string cathode, double breakdown, double drop = 0.65) =>
-        Add(new Diode(Boards.Diode.Zener, name, [anode, cathode], Nominal.Exactly(drop), Nominal.Exactly(breakdown)));
+        Add(new Diode(Core.Boards.Diode.Zener, name, [anode, cathode], Nominal.Exactly(drop), Nominal.Exactly(breakdown)));
 
     public BoardSketch Add(Part part)
     {

@@ -1,4 +1,5 @@
 using System.Collections.Immutable;
+using BenchCheck.Core.Quantities;
 
 namespace BenchCheck.Core.Boards;
 
@@ -9,16 +10,170 @@ namespace BenchCheck.Core.Boards;
 public sealed record StructureProblem(string? Part, string? Node, string Message, bool IsError);
 
 /// <summary>Checks of a board's connections before any solving.</summary>
+/// <remarks>
+/// The cases are those in which the nodal equations have no, or no single, solution: a loop of voltage-defined branches, a cut-set of current
+/// sources, a group of nodes without a path to the reference; and those that can be solved but are rarely meant.
+/// </remarks>
 public static class BoardStructure
 {
-    /// <summary>All problems at once: loops of supplies, islands without a path to the reference, nodes with a single pin.</summary>
+    /// <summary>All problems at once, errors and warnings.</summary>
     public static ImmutableArray<StructureProblem> Problems(Board board)
     {
         ArgumentNullException.ThrowIfNull(board);
-        return [.. board.Parts.SelectMany(p => p.Nodes.Select((node, pin) => (p, node, pin)))
-            .GroupBy(x => x.node, StringComparer.Ordinal)
+        return
+        [
+            .. UntouchedReference(board), .. PartsOnOneNode(board), .. SupplyLoops(board), .. UntiedNodes(board), .. SinglePins(board),
+            .. OpAmpsWithoutFeedback(board),
+        ];
+    }
+
+    private static IEnumerable<StructureProblem> UntouchedReference(Board board)
+    {
+        if (!board.Parts.Any(p => p.Nodes.Contains(board.Reference)))
+            yield return new StructureProblem(null, board.Reference, $"no part touches the reference node {board.Reference}", true);
+    }
+
+    private static IEnumerable<StructureProblem> SinglePins(Board board) =>
+        board.Parts.SelectMany(p => p.Nodes.Select((node, pin) => (Part: p, Node: node, Pin: pin)))
+            .GroupBy(x => x.Node, StringComparer.Ordinal)
             .Where(g => g.Count() == 1 && g.Key != board.Reference)
-            .Select(g => new StructureProblem(g.First().p.Designator, g.Key,
-                $"node {g.Key} has a single pin, {g.First().p.JointName(g.First().pin)}: nothing else connects to it", false))];
+            .Select(g => new StructureProblem(g.First().Part.Designator, g.Key,
+                $"node {g.Key} has a single pin, {g.First().Part.JointName(g.First().Pin)}: nothing else connects to it", false));
+
+    private static IEnumerable<StructureProblem> PartsOnOneNode(Board board) =>
+        board.Parts.Where(p => p.Nodes.Distinct(StringComparer.Ordinal).Count() == 1).Select(p => IsFixedVoltage(p)
+            ? new StructureProblem(p.Designator, p.Nodes[0], $"{p.Designator} is shorted: both of its pins are on node {p.Nodes[0]}", true)
+            : new StructureProblem(p.Designator, p.Nodes[0], $"{p.Designator} has all its pins on node {p.Nodes[0]}: no reading can tell anything of it", false));
+
+    /// <summary>A supply or controlled voltage source without resistance of its own.</summary>
+    private static bool IsFixedVoltage(Part part) =>
+        part is Supply { SourceOhms: null }
+        || ReferenceEquals(part.Kind, ControlledSource.VoltageByVoltage) || ReferenceEquals(part.Kind, ControlledSource.VoltageByCurrent);
+
+    /// <summary>Loops of voltage-defined branches; links count as wires, so that a supply behind one is shorted too.</summary>
+    private static IEnumerable<StructureProblem> SupplyLoops(Board board)
+    {
+        var groups = new NodeGroups(board.Nodes);
+        var links = board.Parts.OfType<Jumper>().ToList();
+        foreach (var link in links) groups.Tie(link.Nodes[0], link.Nodes[1]);
+        var before = new List<Part>();
+        foreach (var part in board.Parts.Where(p => IsFixedVoltage(p) && p.Nodes[0] != p.Nodes[1]))
+        {
+            var (plus, minus) = (part.Nodes[0], part.Nodes[1]);
+            var volts = part is Supply supply ? supply.Volts.Value : double.NaN;
+            if (!groups.AreTied(plus, minus))
+            {
+                groups.Tie(plus, minus, volts);
+                before.Add(part);
+                continue;
+            }
+
+            var others = Between(plus, minus, [.. before, .. links]);
+            yield return new StructureProblem(part.Designator, plus, LoopMessage(part, others, volts, groups.VoltsBetween(plus, minus)), true);
+        }
+    }
+
+    private static string LoopMessage(Part part, IReadOnlyList<Part> others, double volts, double there)
+    {
+        var names = string.Join(", ", others.Select(p => p.Designator));
+        if (others.All(p => p is Jumper)) return $"{part.Designator} is shorted by {names}";
+        if (double.IsNaN(volts) || double.IsNaN(there)) return $"{part.Designator} and {names} make a loop without any resistance: state a source resistance";
+        var (own, theirs) = (EngineeringNotation.Format(volts, Unit.Volt, 3), EngineeringNotation.Format(there, Unit.Volt, 3));
+        return Math.Abs(volts - there) <= 1e-9 * (Math.Abs(volts) + Math.Abs(there))
+            ? $"{part.Designator} and {names} are in parallel without any resistance, so their shares of the current are open: state a source resistance"
+            : $"{part.Designator} contradicts {names}: {own} against {theirs} between the nodes {part.Nodes[0]} and {part.Nodes[1]}";
+    }
+
+    /// <summary>The parts of a path from one node to another; empty when there is none.</summary>
+    private static List<Part> Between(string from, string to, IReadOnlyList<Part> parts)
+    {
+        var reachedBy = new Dictionary<string, (string Node, Part Part)?>(StringComparer.Ordinal) { [from] = null };
+        var touching = PartsByNode(parts);
+        var queue = new Queue<string>([from]);
+        while (queue.TryDequeue(out var node) && node != to)
+        {
+            foreach (var part in touching[node])
+            {
+                foreach (var next in part.Nodes.Where(n => reachedBy.TryAdd(n, (node, part)))) queue.Enqueue(next);
+            }
+        }
+
+        var path = new List<Part>();
+        for (var step = reachedBy.GetValueOrDefault(to); step is { } back; step = reachedBy[back.Node]) path.Add(back.Part);
+        return path;
+    }
+
+    private static ILookup<string, Part> PartsByNode(IEnumerable<Part> parts) =>
+        parts.SelectMany(p => p.Nodes.Distinct(StringComparer.Ordinal).Select(n => (Node: n, Part: p))).ToLookup(x => x.Node, x => x.Part, StringComparer.Ordinal);
+
+    /// <summary>Groups of nodes without a path to the reference: at all, at DC, or but for current sources.</summary>
+    private static IEnumerable<StructureProblem> UntiedNodes(Board board)
+    {
+        var (any, direct, stiff) = (new NodeGroups(board.Nodes), new NodeGroups(board.Nodes), new NodeGroups(board.Nodes));
+        foreach (var part in board.Parts)
+        {
+            any.TieAll(part.Nodes);
+            if (part is Capacitor) continue;
+
+            // The inputs of an op-amp draw no current, so they tie their nodes to nothing.
+            var carrying = part is OpAmp ? part.Nodes.RemoveRange(0, 2) : part.Nodes;
+            direct.TieAll(carrying);
+            if (part is not CurrentSource) stiff.TieAll(carrying);
+        }
+
+        var reference = board.Reference;
+        foreach (var (nodes, parts) in Untied(board, any, reference))
+        {
+            yield return new StructureProblem(parts[0].Designator, nodes[0],
+                $"nothing connects {Names("node", nodes)} ({string.Join(", ", parts.Select(p => p.Designator))}) with the reference {reference}", true);
+        }
+
+        foreach (var (nodes, parts) in Untied(board, direct, reference).Where(g => any.AreTied(g.Nodes[0], reference)))
+        {
+            yield return new StructureProblem(parts[0].Designator, nodes[0],
+                $"no direct current can reach {Names("node", nodes)}: only capacitors or inputs connect there, so the voltage at DC is open", false);
+        }
+
+        foreach (var (nodes, parts) in Untied(board, stiff, reference).Where(g => direct.AreTied(g.Nodes[0], reference)))
+        {
+            var sources = parts.Where(p => p is CurrentSource && p.Nodes.Any(n => !nodes.Contains(n))).Select(p => p.Designator).ToList();
+            yield return new StructureProblem(sources[0], nodes[0],
+                $"only current sources ({string.Join(", ", sources)}) connect {Names("node", nodes)} with the rest of the board: their currents have no way back", true);
+        }
+    }
+
+    private static IEnumerable<(List<string> Nodes, List<Part> Parts)> Untied(Board board, NodeGroups groups, string reference)
+    {
+        var left = board.Nodes.Where(n => !groups.AreTied(n, reference)).ToList();
+        while (left.Count > 0)
+        {
+            var nodes = left.Where(n => groups.AreTied(n, left[0])).ToList();
+            yield return (nodes, [.. board.Parts.Where(p => p.Nodes.Any(nodes.Contains))]);
+            left.RemoveAll(nodes.Contains);
+        }
+    }
+
+    private static string Names(string word, List<string> names) => names.Count == 1 ? $"{word} {names[0]}" : $"{word}s {string.Join(", ", names)}";
+
+    private static IEnumerable<StructureProblem> OpAmpsWithoutFeedback(Board board)
+    {
+        var rails = new NodeGroups(board.Nodes);
+        foreach (var supply in board.Parts.OfType<Supply>()) rails.TieAll(supply.Nodes);
+        var touching = PartsByNode(board.Parts);
+        foreach (var amplifier in board.Parts.OfType<OpAmp>())
+        {
+            var (plus, minus, output) = (amplifier.Nodes[0], amplifier.Nodes[1], amplifier.Nodes[2]);
+            var reached = new HashSet<string>(StringComparer.Ordinal) { output };
+            var queue = new Queue<string>(reached);
+            while (queue.TryDequeue(out var node))
+            {
+                // A signal ends at a rail, and does not come back out of the amplifier itself.
+                if (rails.AreTied(node, board.Reference)) continue;
+                foreach (var next in touching[node].Where(p => !ReferenceEquals(p, amplifier)).SelectMany(p => p.Nodes).Where(reached.Add)) queue.Enqueue(next);
+            }
+
+            if (!reached.Contains(minus) && !reached.Contains(plus))
+                yield return new StructureProblem(amplifier.Designator, output, $"{amplifier.Designator} has no feedback from its output to an input: it works as a comparator", false);
+        }
     }
 }

@@ -91,7 +91,7 @@ internal sealed class PartReader(TableReader table, string designator, Assumptio
         && TextFault.Quote(name).Length == name.Length + 2;
 
     private static bool IsUsableNode(string name) =>
-        name.Length is > 0 and <= LongestName && name.Trim().Length == name.Length && TextFault.Quote(name).Length == name.Length + 2;
+        name.Length is > 0 and <= LongestName && !name.Any(char.IsWhiteSpace) && TextFault.Quote(name).Length == name.Length + 2;
 
     private static string Words(Tolerance tolerance, Unit unit) =>
         tolerance.IsRelative
@@ -162,7 +162,7 @@ internal sealed class PartReader(TableReader table, string designator, Assumptio
     {
         if (value is TomlText text && IsUsableNode(text.Text)) return text.Text;
         var read = value is TomlText bad ? TextFault.Quote(bad.Text) : value.Describe;
-        table.Problems.Error(value.Place, $"{designator}: node of pin {pin} is {read}", $"a node's name of 1 to {LongestName} printable characters");
+        table.Problems.Error(value.Place, $"{designator}: node of pin {pin} is {read}", $"a node's name of 1 to {LongestName} printable characters without spaces");
         return null;
     }
 

@@ -161,6 +161,17 @@ public class BoardFileTests
     }
 
     [Fact]
+    public void Problems_of_the_connections_stand_at_the_line_of_their_part()
+    {
+        var contradiction = Samples.WithParts("""V2 = { kind = "supply", value = "5 V 1%", pins = { plus = "VCC", minus = "GND" } }""");
+        Assert.Null(contradiction.Bench);
+        Assert.StartsWith("board.toml:8:1: error: V2 contradicts V1", Assert.Single(contradiction.Problems).ToString(), StringComparison.Ordinal);
+        var stub = Samples.WithParts("""R3 = { kind = "resistor", value = "1k 5%", pins = ["OUT", "STUB"] }""");
+        Assert.NotNull(stub.Bench);
+        Assert.StartsWith("board.toml:8:1: warning: node STUB has a single pin, R3.2", Assert.Single(stub.Problems).ToString(), StringComparison.Ordinal);
+    }
+
+    [Fact]
     public void All_problems_of_a_file_come_at_once_in_the_order_of_their_lines_also_past_syntax_errors()
     {
         var result = Samples.WithParts("""
