@@ -51,21 +51,35 @@ internal sealed class FaultSearch
     /// <param name="lines">line of each reading in its file, zero for none: wrong readings are named by it</param>
     public List<Fault> Find(double[] measured, double[] noise, IReadOnlyList<int> lines, CancellationToken cancel)
     {
-        var faults = new List<Fault>();
         var best = double.PositiveInfinity;
-        if (Alternative(FaultKind.None, "no fault that these readings show", measured, noise) is { } none)
+        var faults = FitAll(compiled, measured, noise, ref best, cancel);
+        if (Alternative(FaultKind.None, "no fault that these readings show", measured, noise, best) is { } none)
         {
             faults.Add(none);
-            best = none.Evidence.ChiSquared;
+            best = Math.Min(best, none.Evidence.ChiSquared);
         }
 
-        if (Alternative(FaultKind.Unexplained, "something that is not on the list of faults", measured, Broadened(measured, noise)) is { } other)
+        if (Alternative(FaultKind.Unexplained, "something that is not on the list of faults", measured, Broadened(measured, noise), double.PositiveInfinity) is { } other)
             faults.Add(other with { IsBroad = true });
-        faults.AddRange(new ReadingErrors(probes, lines, fit).Of(Healthy, measured, noise, Math.Log(rates[FaultKind.ReadingError])));
-        foreach (var c in compiled)
+        faults.AddRange(new ReadingErrors(probes, lines, fit).Of(Healthy, measured, noise, Math.Log(rates[FaultKind.ReadingError]), best + Hopeless));
+        return faults;
+    }
+
+    /// <summary>Fits hypotheses in the order of their forecasts, so that the first fits show which of the others are not worth finishing.</summary>
+    private List<Fault> FitAll(List<Compiled> hypotheses, double[] measured, double[] noise, ref double best, CancellationToken cancel)
+    {
+        var order = new List<(Compiled Hypothesis, double Forecast)>(hypotheses.Count);
+        foreach (var c in hypotheses)
         {
             cancel.ThrowIfCancellationRequested();
-            if (c.LogRates.All(double.IsNegativeInfinity)) continue;
+            if (!double.IsNegativeInfinity(c.LogRate)) order.Add((c, Forecast(c, measured, noise)));
+        }
+
+        order.Sort((a, b) => a.Forecast.CompareTo(b.Forecast));
+        var faults = new List<Fault>(order.Count);
+        foreach (var (c, _) in order)
+        {
+            cancel.ThrowIfCancellationRequested();
             var evidence = Fit(c, measured, noise, best + Hopeless);
             if (double.IsNegativeInfinity(evidence.LogEvidence)) continue;
             best = Math.Min(best, evidence.ChiSquared);
@@ -87,17 +101,9 @@ internal sealed class FaultSearch
         foreach (var first in bases)
         {
             var shift = first.LogRate - Math.Log(total) + Math.Log(PairShare);
-            foreach (var c in CompileAll(first.Model.Board))
-            {
-                cancel.ThrowIfCancellationRequested();
-                if (Overlaps(first.Named[0], c.Hypothesis)) continue;
-                var evidence = Fit(c, measured, noise, best + Hopeless);
-                if (double.IsNegativeInfinity(evidence.LogEvidence)) continue;
-                best = Math.Min(best, evidence.ChiSquared);
-                pairs.Add(Joined(first, Record(c, evidence, noise), shift));
-            }
-
-            pairs.AddRange(new ReadingErrors(probes, lines, fit).Of(first.Model, measured, noise, Math.Log(rates[FaultKind.ReadingError]))
+            List<Compiled> seconds = [.. CompileAll(first.Model.Board).Where(c => !Overlaps(first.Named[0], c.Hypothesis))];
+            pairs.AddRange(FitAll(seconds, measured, noise, ref best, cancel).Select(second => Joined(first, second, shift)));
+            pairs.AddRange(new ReadingErrors(probes, lines, fit).Of(first.Model, measured, noise, Math.Log(rates[FaultKind.ReadingError]), best + Hopeless)
                 .Select(error => Joined(first, error, shift)));
         }
 
@@ -122,10 +128,10 @@ internal sealed class FaultSearch
         return all;
     }
 
-    private Fault? Alternative(string kind, string words, double[] measured, double[] noise)
+    private Fault? Alternative(string kind, string words, double[] measured, double[] noise, double best)
     {
         Healthy.Forget();
-        var evidence = fit.Fit(Healthy, measured, noise);
+        var evidence = fit.Fit(Healthy, measured, noise, -1, 0, best + Hopeless);
         return double.IsNegativeInfinity(evidence.LogEvidence) ? null : new Fault(
             [new NamedFault(kind, [], [], [], [], null, null, null, words)], [Math.Log(rates[kind])], evidence, Healthy, fit.Phi.ToArray(), noise, fit.Predicted.ToArray());
     }
@@ -160,27 +166,37 @@ internal sealed class FaultSearch
         return new Compiled(hypothesis, model, free);
     }
 
-    private Evidence Fit(Compiled c, ReadOnlySpan<double> measured, ReadOnlySpan<double> noise, double giveUpAbove)
+    /// <summary>χ² to expect of a hypothesis; remembers for one with a free number which two starts promise most.</summary>
+    private double Forecast(Compiled c, double[] measured, double[] noise)
+    {
+        c.Model.Forget();
+        if (c.Free < 0) return fit.Forecast(c.Model, measured, noise, -1, 0);
+        var parameter = c.Model.Parameters[c.Free];
+        var first = double.PositiveInfinity;
+        var second = double.PositiveInfinity;
+        (c.FirstStart, c.SecondStart) = (parameter.Mean, parameter.Mean);
+        foreach (var offset in StartsInSigma)
+        {
+            var start = parameter.Mean + offset * parameter.Sigma;
+            var chiSquared = fit.Forecast(c.Model, measured, noise, c.Free, start);
+            if (chiSquared < first) (second, c.SecondStart, first, c.FirstStart) = (first, c.FirstStart, chiSquared, start);
+            else if (chiSquared < second) (second, c.SecondStart) = (chiSquared, start);
+        }
+
+        return first;
+    }
+
+    private Evidence Fit(Compiled c, double[] measured, double[] noise, double giveUpAbove)
     {
         c.Model.Forget();
         if (c.Free < 0) return fit.Fit(c.Model, measured, noise, -1, 0, giveUpAbove);
 
-        // The two most promising starts: a fit can have a minimum on either side of the nominal value.
-        var parameter = c.Model.Parameters[c.Free];
-        var (first, second) = (double.PositiveInfinity, double.PositiveInfinity);
-        var (firstAt, secondAt) = (parameter.Mean, parameter.Mean);
-        foreach (var offset in StartsInSigma)
-        {
-            var at = parameter.Mean + offset * parameter.Sigma;
-            var chiSquared = fit.Forecast(c.Model, measured, noise, c.Free, at);
-            if (chiSquared < first) (second, secondAt, first, firstAt) = (first, firstAt, chiSquared, at);
-            else if (chiSquared < second) (second, secondAt) = (chiSquared, at);
-        }
-
-        var evidence = fit.Fit(c.Model, measured, noise, c.Free, firstAt, giveUpAbove);
-        if (evidence.ChiSquared < giveUpAbove - Hopeless || !double.IsFinite(second)) return evidence;
-        var other = fit.Fit(c.Model, measured, noise, c.Free, secondAt, giveUpAbove);
-        return other.ChiSquared < evidence.ChiSquared ? other : fit.Fit(c.Model, measured, noise, c.Free, firstAt, giveUpAbove);
+        // A fit can have a minimum on either side of the nominal value: where the first disappoints, the second start is tried too.
+        var evidence = fit.Fit(c.Model, measured, noise, c.Free, c.FirstStart, giveUpAbove);
+        if (evidence.ChiSquared < giveUpAbove - Hopeless || c.SecondStart == c.FirstStart) return evidence;
+        var phi = fit.Phi.ToArray();
+        var other = fit.Fit(c.Model, measured, noise, c.Free, c.SecondStart, giveUpAbove);
+        return other.ChiSquared < evidence.ChiSquared || double.IsInfinity(evidence.ChiSquared) ? other : fit.Fit(c.Model, measured, noise, phi, giveUpAbove);
     }
 
     private Fault Record(Compiled c, Evidence evidence, ReadOnlySpan<double> noise)
@@ -195,5 +211,13 @@ internal sealed class FaultSearch
     private sealed record Compiled(FaultHypothesis Hypothesis, BoardModel Model, int Free)
     {
         public ImmutableArray<double> LogRates { get; set; } = [];
+
+        /// <summary>Logarithm of the prior rate, all names together.</summary>
+        public double LogRate => Math.Log(LogRates.Sum(Math.Exp));
+
+        /// <summary>Where the fit of the free number begins, and where it begins anew when that disappoints.</summary>
+        public double FirstStart { get; set; }
+
+        public double SecondStart { get; set; }
     }
 }

@@ -17,7 +17,7 @@ internal sealed class ReadingErrors(IReadOnlyList<Probe> probes, IReadOnlyList<i
     private readonly record struct Slip(string Words, double Share, double Density);
 
     /// <summary>One fault a reading.</summary>
-    public IEnumerable<Fault> Of(BoardModel healthy, double[] measured, double[] noise, double logRate)
+    public IEnumerable<Fault> Of(BoardModel healthy, double[] measured, double[] noise, double logRate, double giveUpAbove)
     {
         var m = measured.Length;
         var found = new List<Fault>();
@@ -30,7 +30,7 @@ internal sealed class ReadingErrors(IReadOnlyList<Probe> probes, IReadOnlyList<i
             var altered = (double[])noise.Clone();
             altered[i] = breadth * breadth;
             healthy.Forget();
-            var evidence = fit.Fit(healthy, measured, altered);
+            var evidence = fit.Fit(healthy, measured, altered, -1, 0, giveUpAbove);
             if (!double.IsFinite(evidence.LogEvidence)) continue;
             var covariance = new double[p * p];
             fit.Posterior(p, covariance);

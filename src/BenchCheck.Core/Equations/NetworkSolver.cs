@@ -19,17 +19,19 @@ public sealed class NetworkSolver
     /// <summary>Open-loop gain of an amplifier that states none: ideal to one part in ten million of its input.</summary>
     private const double IdealGain = 1e7;
 
+    /// <summary>How far a tangent may miss a junction's curve, in volts, for a loaded reading to be taken from the tangents of the unloaded state.</summary>
+    private const double TangentVolts = 1e-8;
+
     private readonly JunctionLaw law;
     private readonly PortSolver portSolver = new();
     private Network network = null!;
     private double[] a = [];
+    private double[] inverse = [];
     private int[] pivot = [];
     private double[] open = [];
     private double[] response = [];
-    private double[] adjoint = [];
     private double[] x = [];
-    private double[] xc = [];
-    private double[] lc = [];
+    private double[] at = [];
     private double[] lambda = [];
     private double[] impedance = [];
     private double[] loadedImpedance = [];
@@ -40,13 +42,18 @@ public sealed class NetworkSolver
     private double[] loadedZ = [];
     private double[] reach = [];
     private double[] seen = [];
+    private double[] yielding = [];
     private double[] mu = [];
-    private double[] transposed = [];
-    private int[] smallPivot = [];
+    private double[] tangent = [];
+    private double[] loadedTangent = [];
+    private double[] slope = [];
+    private int[] tangentPivot = [];
+    private int[] loadedPivot = [];
     private JunctionCurve[] curves = [];
     private bool[] corners = [];
+    private bool[] isLive = [];
+    private double[] conductance = [];
     private double[] theta = [];
-    private bool adjointsReady;
     private int n;
     private int ports;
 
@@ -69,14 +76,9 @@ public sealed class NetworkSolver
         Stamp();
         if (!LuFactor.Factor(a.AsSpan(0, n * n), n, pivot))
             throw new NoOperatingStateException($"the equations in condition \"{net.Condition.Name}\" have no unique solution");
+        LuFactor.Invert(a, n, pivot, inverse);
         LuFactor.Solve(a, n, pivot, open.AsSpan(0, n));
-        for (var k = 0; k < ports; k++)
-        {
-            var column = response.AsSpan(k * n, n);
-            column.Clear();
-            AddPortColumn(k, column, 1);
-            LuFactor.Solve(a, n, pivot, column);
-        }
+        for (var k = 0; k < ports; k++) Respond(k);
 
         for (var k = 0; k < ports; k++)
         {
@@ -101,7 +103,9 @@ public sealed class NetworkSolver
             if (z[k] != 0) LuFactor.AddScaled(x.AsSpan(0, n), response.AsSpan(k * n, n), -z[k]);
         }
 
-        adjointsReady = false;
+        portSolver.Slope.AsSpan(0, ports).CopyTo(slope);
+        portSolver.IsLive.AsSpan(0, ports).CopyTo(isLive);
+        FactorTangent(impedance, slope, isLive, tangent, tangentPivot);
     }
 
     /// <summary>What a meter shows on the network last solved, and its derivatives.</summary>
@@ -109,120 +113,163 @@ public sealed class NetworkSolver
     /// <exception cref="NoOperatingStateException">the devices find no state with the meter connected</exception>
     public double Read(in Measurement m, Span<double> gradient)
     {
-        var c = xc.AsSpan(0, n);
-        c.Clear();
-        if (m.High >= 0) c[m.High] = 1;
-        if (m.Low >= 0) c[m.Low] = -1;
-        if (m.LoadSiemens == 0 && m.TestAmperes == 0 && gradient.IsEmpty) return Across(x, m.High, m.Low);
-
-        LuFactor.Solve(a, n, pivot, c);
-        var thevenin = Across(c, m.High, m.Low);
+        var reading = Across(x, m.High, m.Low);
         var load = m.LoadSiemens;
-        var share = 1 / (1 + load * thevenin);
+        var isConnected = load != 0 || m.TestAmperes != 0;
+        if (!isConnected && gradient.IsEmpty) return reading;
+
+        var thevenin = Inverse(m.High, m.High) - Inverse(m.High, m.Low) - Inverse(m.Low, m.High) + Inverse(m.Low, m.Low);
         for (var k = 0; k < ports; k++)
         {
             ref readonly var port = ref network.Ports[k];
-            reach[k] = Across(c, port.High, port.Low);
+            reach[k] = Inverse(port.High, m.High) - Inverse(port.High, m.Low) - Inverse(port.Low, m.High) + Inverse(port.Low, m.Low);
             seen[k] = Across(response.AsSpan(k * n, n), m.High, m.Low);
+            yielding[k] = isLive[k] ? reach[k] : 0;
         }
 
-        // With the meter connected the ports see another source and another impedance.
-        var openReading = Across(open, m.High, m.Low);
-        var loaded = z.AsSpan(0, ports);
-        var view = impedance.AsSpan(0, ports * ports);
-        if (load != 0 || m.TestAmperes != 0)
+        // With every device on its tangent the board is linear: the meter meets one resistance and draws one current.
+        if (ports > 0) LuFactor.Solve(tangent, ports, tangentPivot, yielding.AsSpan(0, ports));
+        var effective = thevenin - LuFactor.Dot(seen.AsSpan(0, ports), yielding.AsSpan(0, ports));
+        var volts = (reading + m.TestAmperes * effective) / (1 + load * effective);
+        var meterAmperes = load * volts - m.TestAmperes;
+        var factor = tangent;
+        var factorPivot = tangentPivot;
+        var live = isLive;
+        var share = 1 / (1 + load * effective);
+        if (!isConnected || StaysOnTangents(meterAmperes))
         {
-            loaded = loadedZ.AsSpan(0, ports);
-            view = loadedImpedance.AsSpan(0, ports * ports);
-            for (var k = 0; k < ports; k++)
-            {
-                loadedOpen[k] = openVolts[k] - reach[k] * (load * share * openReading - m.TestAmperes);
-                for (var l = 0; l < ports; l++) view[k * ports + l] = impedance[k * ports + l] - reach[k] * load * share * seen[l];
-            }
-
-            z.AsSpan(0, ports).CopyTo(loaded);
-            if (!portSolver.TrySolve(loadedOpen.AsSpan(0, ports), view, curves, drops, loaded))
-                throw new NoOperatingStateException($"no state of the devices satisfies the equations with the meter connected in condition \"{network.Condition.Name}\"");
+            for (var k = 0; k < ports; k++) loadedZ[k] = z[k] - meterAmperes * yielding[k];
+        }
+        else
+        {
+            volts = SolveLoaded(m, thevenin);
+            meterAmperes = load * volts - m.TestAmperes;
+            (factor, factorPivot, live) = (loadedTangent, loadedPivot, portSolver.IsLive);
+            share = 1 / (1 + load * thevenin);
         }
 
-        var unloaded = openReading + m.TestAmperes * thevenin;
-        for (var k = 0; k < ports; k++) unloaded -= seen[k] * loaded[k];
-        var volts = unloaded * share;
         var scale = m.TestAmperes == 0 ? 1 : 1 / m.TestAmperes;
-        if (!gradient.IsEmpty) Differentiate(m, loaded, view, volts, share, scale, gradient);
+        if (gradient.IsEmpty) return volts * scale;
+
+        // (view + S)ᵀ μ = h · share, then λ = α A⁻ᵀ c − Σ μ A⁻ᵀ d.
+        for (var k = 0; k < ports; k++) mu[k] = live[k] ? seen[k] * share : 0;
+        if (ports > 0) LuFactor.SolveTransposed(factor, ports, factorPivot, mu.AsSpan(0, ports));
+        var alpha = (1 + load * LuFactor.Dot(mu.AsSpan(0, ports), reach.AsSpan(0, ports))) / (1 + load * thevenin);
+        AdjointOf(m, alpha);
+        SolutionWith(m, meterAmperes);
+        gradient.Clear();
+        Accumulate(lambda.AsSpan(0, n), at.AsSpan(0, n), loadedZ, scale, gradient);
         return volts * scale;
     }
 
     /// <summary>Resistance between an unknown and the reference on the network last solved, every port at its slope.</summary>
     public double TheveninOhms(int unknown)
     {
-        Read(new Measurement(unknown, -1), new double[Math.Max(1, theta.Length)]);
-        // The adjoint of the reading itself: λ at the node is the voltage there for one ampere into it.
-        return lambda[unknown];
-    }
-
-    private void Differentiate(
-        in Measurement m, ReadOnlySpan<double> loaded, ReadOnlySpan<double> view, double volts, double share, double scale, Span<double> gradient)
-    {
-        PrepareAdjoints();
-        if (m.LoadSiemens == 0 && m.TestAmperes == 0 && ports > 0)
-        {
-            // Slopes at the unloaded solution: the last search may have been that of a loaded reading.
-            portSolver.TrySolve(openVolts.AsSpan(0, ports), impedance.AsSpan(0, ports * ports), curves, drops, z.AsSpan(0, ports));
-        }
-
-        var l = lc.AsSpan(0, n);
-        l.Clear();
-        if (m.High >= 0) l[m.High] = 1;
-        if (m.Low >= 0) l[m.Low] = -1;
-        LuFactor.SolveTransposed(a, n, pivot, l);
-
         for (var k = 0; k < ports; k++)
         {
-            for (var j = 0; j < ports; j++)
+            ref readonly var port = ref network.Ports[k];
+            yielding[k] = isLive[k] ? Inverse(port.High, unknown) - Inverse(port.Low, unknown) : 0;
+            seen[k] = response[k * n + unknown];
+        }
+
+        if (ports > 0) LuFactor.Solve(tangent, ports, tangentPivot, yielding.AsSpan(0, ports));
+        return Inverse(unknown, unknown) - LuFactor.Dot(seen.AsSpan(0, ports), yielding.AsSpan(0, ports));
+    }
+
+    /// <summary>True when the meter's current moves no device off its tangent, or over a corner, by more than a hair.</summary>
+    private bool StaysOnTangents(double meterAmperes)
+    {
+        for (var k = 0; k < ports; k++)
+        {
+            if (corners[k])
             {
-                transposed[k * ports + j] = portSolver.IsLive[k] && portSolver.IsLive[j] ? view[j * ports + k] : 0;
+                // A dead port yields no current; whether it would come alive shows in its voltage, so any loading is solved anew.
+                if (!isLive[k] || z[k] - meterAmperes * yielding[k] <= 0) return false;
+                continue;
             }
 
-            transposed[k * ports + k] = portSolver.IsLive[k] ? transposed[k * ports + k] + portSolver.Slope[k] : 1;
-            mu[k] = portSolver.IsLive[k] ? seen[k] * share : 0;
+            var change = -meterAmperes * yielding[k];
+            var off = Math.Abs(curves[k].Volts(z[k] + change) - curves[k].Volts(z[k]) - slope[k] * change);
+            if (!(off <= TangentVolts)) return false;
         }
 
-        if (ports > 0)
-        {
-            LuFactor.Factor(transposed.AsSpan(0, ports * ports), ports, smallPivot);
-            LuFactor.Solve(transposed, ports, smallPivot, mu.AsSpan(0, ports));
-        }
-
-        var alpha = share;
-        for (var k = 0; k < ports; k++) alpha += m.LoadSiemens * share * mu[k] * reach[k];
-        var adj = lambda.AsSpan(0, n);
-        for (var i = 0; i < n; i++) adj[i] = alpha * l[i];
-        for (var k = 0; k < ports; k++)
-        {
-            if (mu[k] != 0) LuFactor.AddScaled(adj, adjoint.AsSpan(k * n, n), -mu[k]);
-        }
-
-        // The solution with the meter connected; the reading's own response is no longer needed, so its buffer takes it.
-        var meterAmperes = m.LoadSiemens * volts - m.TestAmperes;
-        var at = xc.AsSpan(0, n);
-        for (var i = 0; i < n; i++) at[i] = open[i] - meterAmperes * at[i];
-        for (var k = 0; k < ports; k++)
-        {
-            if (loaded[k] != 0) LuFactor.AddScaled(at, response.AsSpan(k * n, n), -loaded[k]);
-        }
-
-        gradient.Clear();
-        Accumulate(adj, at, loaded, scale, gradient);
+        return true;
     }
+
+    /// <summary>Finds the devices' state with the meter connected: to them it is another source and another impedance.</summary>
+    private double SolveLoaded(in Measurement m, double thevenin)
+    {
+        var share = 1 / (1 + m.LoadSiemens * thevenin);
+        var openReading = Across(open, m.High, m.Low);
+        var view = loadedImpedance.AsSpan(0, ports * ports);
+        for (var k = 0; k < ports; k++)
+        {
+            loadedOpen[k] = openVolts[k] - reach[k] * (m.LoadSiemens * share * openReading - m.TestAmperes);
+            for (var l = 0; l < ports; l++) view[k * ports + l] = impedance[k * ports + l] - reach[k] * m.LoadSiemens * share * seen[l];
+        }
+
+        var loaded = loadedZ.AsSpan(0, ports);
+        z.AsSpan(0, ports).CopyTo(loaded);
+        if (!portSolver.TrySolve(loadedOpen.AsSpan(0, ports), view, curves, drops, loaded))
+            throw new NoOperatingStateException($"no state of the devices satisfies the equations with the meter connected in condition \"{network.Condition.Name}\"");
+        FactorTangent(view, portSolver.Slope, portSolver.IsLive, loadedTangent, loadedPivot);
+        return (openReading + m.TestAmperes * thevenin - LuFactor.Dot(seen.AsSpan(0, ports), loaded)) * share;
+    }
+
+    /// <summary>Factors view + S; a dead port keeps its current at zero.</summary>
+    private void FactorTangent(ReadOnlySpan<double> view, ReadOnlySpan<double> slopes, ReadOnlySpan<bool> live, double[] factor, int[] order)
+    {
+        for (var k = 0; k < ports; k++)
+        {
+            for (var l = 0; l < ports; l++) factor[k * ports + l] = live[k] && live[l] ? view[k * ports + l] : 0;
+            factor[k * ports + k] = live[k] ? factor[k * ports + k] + slopes[k] : 1;
+        }
+
+        LuFactor.Factor(factor.AsSpan(0, ports * ports), ports, order);
+    }
+
+    private void AdjointOf(in Measurement m, double alpha)
+    {
+        var adjoint = lambda.AsSpan(0, n);
+        adjoint.Clear();
+        AddRow(adjoint, m.High, alpha);
+        AddRow(adjoint, m.Low, -alpha);
+        for (var k = 0; k < ports; k++)
+        {
+            if (mu[k] == 0) continue;
+            AddRow(adjoint, network.Ports[k].High, -mu[k]);
+            AddRow(adjoint, network.Ports[k].Low, mu[k]);
+        }
+    }
+
+    /// <summary>The unknowns with the meter connected.</summary>
+    private void SolutionWith(in Measurement m, double meterAmperes)
+    {
+        var solution = at.AsSpan(0, n);
+        open.AsSpan(0, n).CopyTo(solution);
+        for (var k = 0; k < ports; k++)
+        {
+            if (loadedZ[k] != 0) LuFactor.AddScaled(solution, response.AsSpan(k * n, n), -loadedZ[k]);
+        }
+
+        if (meterAmperes == 0) return;
+        for (var i = 0; i < n; i++) solution[i] -= meterAmperes * (Inverse(i, m.High) - Inverse(i, m.Low));
+    }
+
+    private void AddRow(Span<double> sum, int row, double factor)
+    {
+        if (row >= 0) LuFactor.AddScaled(sum, inverse.AsSpan(row * n, n), factor);
+    }
+
+    private double Inverse(int row, int column) => row < 0 || column < 0 ? 0 : inverse[row * n + column];
 
     /// <summary>∂y/∂θ from the adjoint λ, the solution x and the port currents: one term a coefficient.</summary>
     private void Accumulate(ReadOnlySpan<double> adj, ReadOnlySpan<double> at, ReadOnlySpan<double> loaded, double scale, Span<double> gradient)
     {
-        foreach (ref readonly var e in network.Conductors.AsSpan())
+        for (var i = 0; i < network.Conductors.Length; i++)
         {
-            var ohms = e.Ohms.Value(theta);
-            AddTerm(e.Ohms, scale * Across(adj, e.From, e.To) * Across(at, e.From, e.To) / (ohms * ohms), gradient);
+            ref readonly var e = ref network.Conductors[i];
+            AddTerm(e.Ohms, scale * Across(adj, e.From, e.To) * Across(at, e.From, e.To) * conductance[i] * conductance[i], gradient);
         }
 
         foreach (ref readonly var e in network.Voltages.AsSpan())
@@ -267,22 +314,6 @@ public sealed class NetworkSolver
         if (c.Second >= 0) gradient[c.Second] += weight * c.BySecond(theta);
     }
 
-    private void PrepareAdjoints()
-    {
-        if (adjointsReady) return;
-        for (var k = 0; k < ports; k++)
-        {
-            var row = adjoint.AsSpan(k * n, n);
-            row.Clear();
-            ref readonly var port = ref network.Ports[k];
-            if (port.High >= 0) row[port.High] = 1;
-            if (port.Low >= 0) row[port.Low] -= 1;
-            LuFactor.SolveTransposed(a, n, pivot, row);
-        }
-
-        adjointsReady = true;
-    }
-
     private void Adopt(Network net, ReadOnlySpan<double> parameters)
     {
         if (theta.Length != parameters.Length) theta = new double[parameters.Length];
@@ -290,7 +321,8 @@ public sealed class NetworkSolver
         network = net;
         n = net.Size;
         ports = net.PortCount;
-        if (x.Length < n || z.Length < ports || response.Length < n * ports) Grow();
+        if (x.Length < n || z.Length < ports) Grow();
+        if (conductance.Length < net.Conductors.Length) conductance = new double[net.Conductors.Length];
         for (var k = 0; k < ports; k++)
         {
             ref readonly var port = ref net.Ports[k];
@@ -309,9 +341,10 @@ public sealed class NetworkSolver
         var b = open.AsSpan(0, n);
         b.Clear();
         foreach (var node in network.Leaks) a[node * n + node] += Network.LeakageSiemens;
-        foreach (ref readonly var e in network.Conductors.AsSpan())
+        for (var i = 0; i < network.Conductors.Length; i++)
         {
-            var siemens = 1 / e.Ohms.Value(theta);
+            ref readonly var e = ref network.Conductors[i];
+            var siemens = conductance[i] = 1 / e.Ohms.Value(theta);
             Add(e.From, e.From, siemens);
             Add(e.To, e.To, siemens);
             Add(e.From, e.To, -siemens);
@@ -355,21 +388,22 @@ public sealed class NetworkSolver
         }
     }
 
-    /// <summary>Adds factor times the column of C that belongs to a port.</summary>
-    private void AddPortColumn(int k, Span<double> column, double factor)
+    /// <summary>A⁻¹ times the column of C that belongs to a port.</summary>
+    private void Respond(int k)
     {
         ref readonly var port = ref network.Ports[k];
+        var column = response.AsSpan(k * n, n);
         if (port.Row >= 0)
         {
-            column[port.Row] += factor * port.RowSign;
+            for (var i = 0; i < n; i++) column[i] = port.RowSign * Inverse(i, port.Row);
             return;
         }
 
-        var through = factor / port.Gain.Value(theta);
-        if (port.High >= 0) column[port.High] += through;
-        if (port.Low >= 0) column[port.Low] -= through;
-        if (port.TransportFrom >= 0) column[port.TransportFrom] += factor;
-        if (port.TransportTo >= 0) column[port.TransportTo] -= factor;
+        var through = 1 / port.Gain.Value(theta);
+        for (var i = 0; i < n; i++)
+        {
+            column[i] = through * (Inverse(i, port.High) - Inverse(i, port.Low)) + Inverse(i, port.TransportFrom) - Inverse(i, port.TransportTo);
+        }
     }
 
     private void Add(int row, int column, double value)
@@ -384,17 +418,17 @@ public sealed class NetworkSolver
         var size = Math.Max(n, x.Length);
         var count = Math.Max(ports, z.Length);
         a = new double[size * size];
+        inverse = new double[size * size];
         pivot = new int[size];
         open = new double[size];
         x = new double[size];
-        xc = new double[size];
-        lc = new double[size];
+        at = new double[size];
         lambda = new double[size];
         response = new double[size * count];
-        adjoint = new double[size * count];
         impedance = new double[count * count];
         loadedImpedance = new double[count * count];
-        transposed = new double[count * count];
+        tangent = new double[count * count];
+        loadedTangent = new double[count * count];
         openVolts = new double[count];
         loadedOpen = new double[count];
         drops = new double[count];
@@ -402,8 +436,12 @@ public sealed class NetworkSolver
         loadedZ = new double[count];
         reach = new double[count];
         seen = new double[count];
+        yielding = new double[count];
         mu = new double[count];
-        smallPivot = new int[count];
+        slope = new double[count];
+        tangentPivot = new int[count];
+        loadedPivot = new int[count];
+        isLive = new bool[count];
         curves = new JunctionCurve[count];
         corners = new bool[count];
     }

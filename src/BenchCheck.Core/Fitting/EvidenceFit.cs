@@ -25,7 +25,10 @@ public sealed class EvidenceFit
     private const double UnknownLinearSigma = 10;
 
     /// <summary>Expected decrease of χ² at which the fit stands still.</summary>
-    private const double Still = 1e-9;
+    private const double Still = 1e-7;
+
+    /// <summary>Steps that even a hopeless model is given, since the first forecast may lie on the wrong side of a change of state.</summary>
+    private const int LeastSteps = 2;
 
     private double[] jacobian = [];
     private double[] trialJacobian = [];
@@ -82,11 +85,12 @@ public sealed class EvidenceFit
     }
 
     /// <summary>Minimises from a given φ: cheap where an earlier fit ended there.</summary>
-    public Evidence Fit(BoardModel model, ReadOnlySpan<double> measured, ReadOnlySpan<double> noise, ReadOnlySpan<double> start)
+    public Evidence Fit(
+        BoardModel model, ReadOnlySpan<double> measured, ReadOnlySpan<double> noise, ReadOnlySpan<double> start, double giveUpAbove = double.PositiveInfinity)
     {
         Prepare(model);
         start.CopyTo(phi);
-        return Run(model, measured, noise, double.PositiveInfinity);
+        return Run(model, measured, noise, giveUpAbove);
     }
 
     private Evidence Run(BoardModel model, ReadOnlySpan<double> measured, ReadOnlySpan<double> noise, double giveUpAbove)
@@ -161,7 +165,7 @@ public sealed class EvidenceFit
             var forecast = ForecastChiSquared(measured);
             var expected = chiSquared - forecast;
             if (expected < Still * (1 + chiSquared)) return Score(chiSquared, true);
-            if (forecast > giveUpAbove && iteration > 0) return Score(chiSquared, false);
+            if (forecast > giveUpAbove && iteration >= LeastSteps) return Score(chiSquared, false);
 
             for (var i = 0; i < p; i++)
             {
