@@ -30,6 +30,6 @@ internal static class WorkshopBoards
     /// <summary>A voltage reading at every node, in every condition, of a value still to come.</summary>
     public static ImmutableArray<Reading> EveryNode(Bench bench) =>
     [
-        .. bench.Board.Conditions.SelectMany(c => bench.Board.Nodes.Skip(1).Select(n => new Reading([], c.Name, ReadingQuantity.Voltage, n, bench.Board.Reference, 0))),
+        .. bench.Board.Conditions.Where(c => !c.SuppliesRemoved).SelectMany(c => bench.Board.Nodes.Skip(1).Select(n => new Reading([], c.Name, ReadingQuantity.Voltage, n, bench.Board.Reference, 0))),
     ];
 }

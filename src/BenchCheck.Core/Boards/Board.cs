@@ -20,6 +20,7 @@ public sealed class Board
         Origin = origin;
         Parts = parts;
         Conditions = conditions.IsDefaultOrEmpty ? [Condition.Powered] : conditions;
+        if (!Conditions.Any(c => c.SuppliesRemoved || c.Name == Condition.Unpowered.Name)) Conditions = Conditions.Add(Condition.Unpowered);
         Adjacent = adjacent.IsDefault ? [] : adjacent;
         foreach (var part in parts)
         {
@@ -51,7 +52,7 @@ public sealed class Board
 
     public ImmutableArray<Part> Parts { get; }
 
-    /// <summary>At least one; the first is meant where a reading names none.</summary>
+    /// <summary>At least one, the first being meant where a reading names none; one with the supplies removed is always among them.</summary>
     public ImmutableArray<Condition> Conditions { get; private init; }
 
     /// <summary>Every node, the reference first, the others in the order of the parts list.</summary>

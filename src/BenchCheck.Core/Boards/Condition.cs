@@ -17,6 +17,9 @@ public sealed record Condition(
     public static Condition Powered { get; } =
         new(DefaultName, false, ImmutableDictionary<string, Nominal>.Empty, ImmutableDictionary<string, string>.Empty);
 
+    /// <summary>Supplies lifted off: what an ohmmeter needs. Every board has such a condition, declared or not.</summary>
+    public static Condition Unpowered { get; } = Powered with { Name = "unpowered", SuppliesRemoved = true };
+
     /// <summary>Set for a small-signal condition: the DC condition whose operating point it stands on; null for a DC condition.</summary>
     public string? OperatingPoint { get; init; }
 

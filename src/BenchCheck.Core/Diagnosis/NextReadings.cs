@@ -26,6 +26,9 @@ internal sealed class NextReadings(Bench bench, ReadingPlan plan, EvidenceFit fi
 
     private const int MostReadings = 8;
 
+    /// <summary>How many different outcomes of a reading are put into words.</summary>
+    private const int MostOutcomes = 4;
+
     public ImmutableArray<NextReading> Rank(List<FaultGroup> groups, CancellationToken cancel)
     {
         var candidates = Candidates();
@@ -53,7 +56,7 @@ internal sealed class NextReadings(Bench bench, ReadingPlan plan, EvidenceFit fi
             double[] v = [.. chosen.Select(h => variance[c, h])];
             var bits = MixtureInformation.Bits(probability, m, v);
             if (bits < LeastBits) continue;
-            ranked.Add(Describe(candidates[c], bits, [.. chosen.Select((h, i) => (faults[h].Fault, faults[h].Group, m[i], Math.Sqrt(v[i])))]));
+            ranked.Add(Describe(candidates[c], bits, [.. chosen.Select((h, i) => (faults[h].Fault, faults[h].Group, probability[i], m[i], Math.Sqrt(v[i])))]));
         }
 
         // Among readings that tell about the same, one that needs no change of the set-up comes first.
@@ -126,18 +129,33 @@ internal sealed class NextReadings(Bench bench, ReadingPlan plan, EvidenceFit fi
         return true;
     }
 
-    private NextReading Describe(Probe probe, double bits, (Fault Fault, int Group, double Value, double Sigma)[] predictions)
+    private NextReading Describe(Probe probe, double bits, (Fault Fault, int Group, double Probability, double Value, double Sigma)[] predictions)
     {
         var unit = probe.Quantity.Unit();
-        var leaders = predictions.GroupBy(x => x.Group).Select(g => g.First()).OrderBy(x => x.Group).ToArray();
-        var shown = leaders.Take(4).Select(x => $"near {EngineeringNotation.Format(x.Value, unit)}: {x.Fault.Named[0].Text}");
+        var leaders = predictions.GroupBy(x => x.Group).Select(g => g.MaxBy(x => x.Probability)).OrderBy(x => x.Group).ToArray();
+        var shown = Outcomes(predictions).Take(MostOutcomes).Select(x => $"near {EngineeringNotation.Format(x.Value, unit, 3)}: {x.Words}");
         var place = probe.Against == bench.Board.Reference ? probe.At : $"{probe.At} against {probe.Against}";
-        var condition = bench.Board.Conditions.Length > 1 ? $" ({probe.Condition})" : "";
-        string? caution = probe.Quantity == ReadingQuantity.Resistance
+        var isOhms = probe.Quantity == ReadingQuantity.Resistance;
+        var condition = isOhms || bench.Board.Conditions.Count(c => !c.SuppliesRemoved && !c.IsSmallSignal) > 1 ? $" ({probe.Condition})" : "";
+        var caution = isOhms
             ? "Supplies off and removed, capacitors discharged first."
-            : leaders.Any(x => Cautions.IsHazardous(x.Value)) ? $"Hazardous voltage: above {Cautions.HazardousVoltsDc} V may stand here." : null;
+            : predictions.Any(x => Cautions.IsHazardous(x.Value)) ? $"Hazardous voltage: above {Cautions.HazardousVoltsDc} V may stand here." : null;
         return new NextReading(
             probe.Condition, probe.Quantity, probe.At, probe.Against, bits, [.. leaders.Select(x => new Expectation(x.Group, x.Value, x.Sigma))], caution,
             $"{place}{condition} {string.Join("; ", shown)}");
+    }
+
+    /// <summary>What the meter may show, likeliest first, with the faults that would make it so; values that it could not tell apart are one.</summary>
+    private static IEnumerable<(double Value, string Words)> Outcomes((Fault Fault, int Group, double Probability, double Value, double Sigma)[] predictions)
+    {
+        var left = predictions.OrderByDescending(x => x.Probability).ToList();
+        while (left.Count > 0)
+        {
+            var first = left[0];
+            var alike = left.Where(x => Math.Abs(x.Value - first.Value) < 2 * Math.Sqrt(x.Sigma * x.Sigma + first.Sigma * first.Sigma)).ToArray();
+            var names = alike.Take(2).Select(x => x.Fault.Named[0].Text);
+            yield return (first.Value, string.Join(" or ", names) + (alike.Length > 2 ? " or others" : ""));
+            left.RemoveAll(x => Array.IndexOf(alike, x) >= 0);
+        }
     }
 }

@@ -33,7 +33,7 @@ public sealed record Probe(string Condition, ReadingQuantity Quantity, string At
     public double ScaleUncertainty => StandardUncertainty.Rectangular(Function.ReadingFraction);
 
     /// <summary>Name of what shares the scale error.</summary>
-    public string ScaleGroupName => $"{Meter.Name}, {Quantity.Name()}, {EngineeringNotation.Format(Range, Quantity.Unit())} range";
+    public string ScaleGroupName => $"{Meter.Name}, {Quantity.Name()}, {EngineeringNotation.Format(Range, Quantity.Unit(), 2)} range";
 
     /// <summary>What shares the scale error: "handheld, voltage, 6 V range".</summary>
     public (string Meter, ReadingQuantity Function, double Range) ScaleGroup => (Meter.Name, Quantity, Range);
