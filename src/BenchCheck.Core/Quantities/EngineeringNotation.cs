@@ -90,12 +90,6 @@ public static class EngineeringNotation
 
     private readonly record struct Scale(int Exponent, string Suffix)
     {
-        public double Apply(double value) => Exponent switch
-        {
-            0 => value,
-            > 0 => value / Math.Pow(10, Exponent),
-            < -300 => value * 1e300 * Math.Pow(10, -Exponent - 300),
-            _ => value * Math.Pow(10, -Exponent),
-        };
+        public double Apply(double value) => DecimalScale.Apply(value, -Exponent);
     }
 }

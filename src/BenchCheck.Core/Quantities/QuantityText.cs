@@ -127,7 +127,7 @@ public static class QuantityText
     /// <param name="IsSpaced">a space stood before prefix and unit</param>
     private readonly record struct Quantity(double Number, int Exponent, bool IsBare, bool IsSpaced, double? CodeTolerance)
     {
-        public Quantity ScaledBy(int exponent) => this with { Number = Number * Math.Pow(10, exponent), Exponent = exponent };
+        public Quantity ScaledBy(int exponent) => this with { Number = DecimalScale.Apply(Number, exponent), Exponent = exponent };
 
         public static Parsed<Quantity> Read(ReadOnlySpan<char> text, Unit unit)
         {
@@ -138,8 +138,7 @@ public static class QuantityText
             if (NumberText.Read(text, out var suffix) is not { } number) return new TextFault(TextFault.Quote(text), UnitText.Describe(unit), NotANumber(text));
             if (UnitText.Read(suffix, unit) is not { } read) return new TextFault(TextFault.Quote(text), UnitText.Describe(unit), $"{TextFault.Quote(suffix)} is no unit or prefix known here");
             if (read.Unit is { } other && other != unit) return new TextFault($"{TextFault.Quote(text)}, {UnitText.Describe(other)}", UnitText.Describe(unit));
-            var value = number * Math.Pow(10, read.Exponent);
-            if (read.Exponent < 0) value = number / Math.Pow(10, -read.Exponent);
+            var value = DecimalScale.Apply(number, read.Exponent);
             if (!(Math.Abs(value) <= Largest)) return new TextFault(TextFault.Quote(text), $"{UnitText.Describe(unit)} of at most 1e15", "M is mega, m is milli");
             return new Quantity(value, read.Exponent, suffix.IsEmpty, text.Length > suffix.Length && char.IsWhiteSpace(text[^(suffix.Length + 1)]), null);
         }
