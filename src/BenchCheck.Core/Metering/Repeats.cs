@@ -22,4 +22,17 @@ public readonly record struct Repeats(int Count, double Mean, double Deviation)
         var (mean, deviation) = values.MeanStandardDeviation();
         return new Repeats(values.Length, mean, values.Length == 1 ? 0 : deviation);
     }
+
+    /// <summary>Groups of repeats of the same reading as one: their squares within and between the groups add up.</summary>
+    /// <exception cref="ArgumentException">no groups</exception>
+    public static Repeats Pooled(IReadOnlyCollection<Repeats> groups)
+    {
+        ArgumentNullException.ThrowIfNull(groups);
+        if (groups.Count == 0) throw new ArgumentException("no readings to take together", nameof(groups));
+        var count = groups.Sum(g => g.Count);
+        var first = groups.First().Mean;
+        var mean = first + (groups.Sum(g => g.Count * (g.Mean - first)) / count);
+        var squares = groups.Sum(g => ((g.Count - 1) * g.Deviation * g.Deviation) + (g.Count * (g.Mean - mean) * (g.Mean - mean)));
+        return new Repeats(count, mean, count == 1 ? 0 : Math.Sqrt(squares / (count - 1)));
+    }
 }

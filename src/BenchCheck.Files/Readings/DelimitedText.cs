@@ -58,7 +58,10 @@ internal static class DelimitedText
             var row = new DelimitedRow((int)Math.Min(reader.LineNumber, int.MaxValue), cells, malformed);
             malformed = null;
             var isSeparatorLine = row.Line == 1 && cells.Length <= 2 && cells[0].StartsWith("sep=", StringComparison.OrdinalIgnoreCase);
-            if (!row.IsBlank && !isSeparatorLine && !cells[0].StartsWith('#')) yield return row;
+            if (!row.IsBlank && !isSeparatorLine && !IsComment(reader)) yield return row;
         }
     }
+
+    /// <summary>A comment behind blanks; a # in quotation marks is text.</summary>
+    private static bool IsComment(CsvReader reader) => reader.RawRecord.TrimStart(" \t"u8).StartsWith((byte)'#');
 }

@@ -16,7 +16,7 @@ internal sealed record ReadingsHeader(
     FrozenDictionary<string, int> Fields, string? ValueUnit, ImmutableArray<PlaceColumn> Places, int ColumnCount)
 {
     private static readonly ImmutableArray<string> LongFields =
-        ["serial", "condition", "quantity", "at", "against", "value", "unit", "meter", "range", "uncertainty", "time", "note"];
+        ["serial", "condition", "quantity", "at", "against", "value", "unit", "meter", "range", "uncertainty", "repeats", "scatter", "time", "note"];
 
     private static readonly ImmutableArray<string> WideFields = ["serial", "condition", "meter", "time", "note"];
 

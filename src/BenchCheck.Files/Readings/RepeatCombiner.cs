@@ -41,7 +41,7 @@ internal sealed class RepeatCombiner
         public Reading Combined()
         {
             if (repeats is null) return first;
-            var together = Repeats.Of([.. repeats.Select(r => r.Value)]);
+            var together = Repeats.Pooled([.. repeats.Select(r => new Repeats(r.Repeats, r.Value, r.RepeatUncertainty * Math.Sqrt(r.Repeats)))]);
             var notes = repeats.Select(r => r.Note).OfType<string>().Distinct().ToList();
             return first with
             {

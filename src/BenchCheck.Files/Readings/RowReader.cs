@@ -10,6 +10,8 @@ namespace BenchCheck.Files;
 /// <summary>Turns rows into readings, one reading a row in the long form, one a filled cell in the wide form.</summary>
 internal sealed class RowReader(ReadingsHeader header, BoardNames names)
 {
+    private const int MostRepeats = 1_000_000;
+
     private readonly ReadingCheck check = new(names);
     private readonly Dictionary<string, Parsed<(double Factor, Unit? Unit)>> units = new(StringComparer.Ordinal);
 
@@ -61,7 +63,23 @@ internal sealed class RowReader(ReadingsHeader header, BoardNames names)
         if (Take(setting, quantity, at, Cell("against"), valueText, unitText) is not { } reading) return;
         var range = Optional(Cell("range"), "range", quantity, unitText);
         var uncertainty = Uncertainty(Cell("uncertainty"), quantity, unitText, reading.Value);
-        if (Faults.Count == 0) Finish(reading with { Range = range, StatedUncertainty = uncertainty }, setting);
+        var (repeats, scatter) = RepeatsOf(Cell("repeats"), Cell("scatter"), quantity, unitText);
+        if (Faults.Count > 0) return;
+        Finish(reading with { Range = range, StatedUncertainty = uncertainty, Repeats = repeats, RepeatUncertainty = scatter }, setting);
+    }
+
+    /// <summary>How many repeats a value already is the mean of, and the standard uncertainty of that mean from their scatter.</summary>
+    private (int Repeats, double Scatter) RepeatsOf(string countText, string scatterText, ReadingQuantity quantity, string unitText)
+    {
+        var count = 1;
+        if (countText.Length > 0 && (!int.TryParse(countText, NumberStyles.None, CultureInfo.InvariantCulture, out count) || count is < 1 or > MostRepeats))
+            Faults.Add(new TextFault($"repeats {TextFault.Quote(countText)}", $"a whole number from 1 to {MostRepeats}"));
+        if (scatterText.Length == 0) return (count, 0);
+        var scatter = Quantity(scatterText, quantity.Unit(), unitText);
+        if (scatter.Fault is { } fault) Faults.Add(fault with { Read = $"scatter: {fault.Read}" });
+        else if (scatter.Value < 0 || count < 2) Faults.Add(new TextFault($"scatter {TextFault.Quote(scatterText)}", "zero or more, beside two repeats or more"));
+        else return (count, scatter.Value);
+        return (count, 0);
     }
 
     private void ReadWide(DelimitedRow row)
