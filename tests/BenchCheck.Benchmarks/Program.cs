@@ -1,5 +1,6 @@
 using System.CommandLine;
 using BenchCheck.Benchmarks.Scoreboard;
+using BenchCheck.Benchmarks.Scoreboard.Commands;
 
-var root = new RootCommand("Measures of the program against known truth.") { TruthCheck.Command };
+var root = new RootCommand("Measures of the program against known truth.") { TruthCheck.Command, ScoreboardCommand.Create() };
 return root.Parse(args).Invoke();

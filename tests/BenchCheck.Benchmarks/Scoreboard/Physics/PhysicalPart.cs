@@ -1,4 +1,5 @@
 using System.Collections.Immutable;
+using System.Text;
 using BenchCheck.Core.Boards;
 
 namespace BenchCheck.Benchmarks.Scoreboard.Physics;
@@ -8,6 +9,14 @@ public abstract record PhysicalPart(string Designator, ImmutableArray<string> No
 {
     /// <summary>Puts the part into the netlist of a condition.</summary>
     public abstract void Place(TruthCircuit circuit, Condition condition);
+
+    /// <summary>Designator and nodes as the reports print them.</summary>
+    protected virtual bool PrintMembers(StringBuilder builder)
+    {
+        ArgumentNullException.ThrowIfNull(builder);
+        builder.Append(Designator).Append(' ').AppendJoin(' ', Nodes);
+        return true;
+    }
 
     /// <summary>The part with one pin on another node.</summary>
     public PhysicalPart Moved(int pin, string node) => this with { Nodes = Nodes.SetItem(pin, node) };
