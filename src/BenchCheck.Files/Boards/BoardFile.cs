@@ -18,6 +18,9 @@ public static class BoardFile
     /// <summary>Largest board file in bytes; a board of a thousand parts takes a tenth of it.</summary>
     public const int LargestFile = 1_000_000;
 
+    /// <summary>Most parts of one board.</summary>
+    public const int MostParts = 2000;
+
     public static BoardFileResult Read(string path)
     {
         ArgumentNullException.ThrowIfNull(path);

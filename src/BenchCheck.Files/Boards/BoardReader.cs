@@ -63,6 +63,13 @@ internal sealed class BoardReader(ProblemList problems)
             return;
         }
 
+        if (table.Entries.Count > BoardFile.MostParts)
+        {
+            problems.Error(table.Place, $"{table.Entries.Count} parts", $"a board of at most {BoardFile.MostParts} parts");
+            broken.Add("");
+            return;
+        }
+
         foreach (var entry in table.Entries)
         {
             places[entry.Key] = entry.Place;

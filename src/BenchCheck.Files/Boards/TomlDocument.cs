@@ -12,9 +12,12 @@ internal static partial class TomlDocument
 {
     private const int MostSyntaxErrors = 50;
 
+    /// <summary>With errors on more lines than these the text is hardly a board file, and reading on past each would only take long.</summary>
+    private const int HopelessLines = 200;
+
     /// <param name="text">the file</param>
     /// <param name="problems">receives syntax errors and keys given twice</param>
-    /// <param name="broken">receives the keys of lines that could not be read, so that nothing else is blamed for their absence</param>
+    /// <param name="broken">receives the keys of lines that could not be read, so that nothing else is blamed for their absence; an empty key for a rest unread</param>
     public static TomlTable Read(string text, ProblemList problems, ISet<string> broken)
     {
         var lines = text.Split('\n');
@@ -32,9 +35,10 @@ internal static partial class TomlDocument
                 return new TomlTable(default);
             }
 
-            var first = document.Diagnostics.Where(d => d.Kind == DiagnosticMessageKind.Error)
-                .OrderBy(d => d.Span.Start.Line).ThenBy(d => d.Span.Start.Column).FirstOrDefault();
-            if (first is null) return new TreeBuilder(problems).Build(document);
+            var errors = document.Diagnostics.Where(d => d.Kind == DiagnosticMessageKind.Error).OrderBy(d => d.Span.Start.Line).ThenBy(d => d.Span.Start.Column).ToList();
+            if (errors.Count == 0) return new TreeBuilder(problems).Build(document);
+            var first = errors[0];
+            var isHopeless = errors.Count > HopelessLines && errors.DistinctBy(d => d.Span.Start.Line).Skip(HopelessLines).Any();
             var at = Math.Clamp(first.Span.Start.Line, 0, lines.Length - 1);
 
             // The unread end of an unclosed list or string shows up on a later, often empty, line: the last line with text holds the error.
@@ -42,9 +46,10 @@ internal static partial class TomlDocument
             problems.Error(new TomlPlace(at + 1, at == first.Span.Start.Line ? first.Span.Start.Column + 1 : 0),
                 Describe(first.Message), "TOML: key = value", Advice(lines[at]));
             if (KeyAtStart().Match(lines[at]) is { Success: true } key) broken.Add(key.Groups["key"].Value);
-            if (round >= MostSyntaxErrors || string.IsNullOrWhiteSpace(lines[at]))
+            if (round >= MostSyntaxErrors || isHopeless || string.IsNullOrWhiteSpace(lines[at]))
             {
-                problems.Error(new TomlPlace(at + 1, 0), "the rest of the file was not read", null, "put the errors above right first");
+                broken.Add("");
+                problems.Error(new TomlPlace(at + 1, 0), "the rest of the file was not read", null, isHopeless ? "is this a board file?" : "put the errors above right first");
                 return new TomlTable(default);
             }
 

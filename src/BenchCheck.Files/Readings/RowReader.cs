@@ -65,6 +65,8 @@ internal sealed class RowReader(ReadingsHeader header, BoardNames names)
         var uncertainty = Uncertainty(Cell("uncertainty"), quantity, unitText, reading.Value);
         var (repeats, scatter) = RepeatsOf(Cell("repeats"), Cell("scatter"), quantity, unitText);
         if (Faults.Count > 0) return;
+        if (range is { } fullScale && Math.Abs(reading.Value) > 1.1 * fullScale)
+            Remarks.Add(new TextFault($"a value above the range stated, {EngineeringNotation.Format(fullScale, quantity.Unit(), 3)}", "a range that shows it"));
         Finish(reading with { Range = range, StatedUncertainty = uncertainty, Repeats = repeats, RepeatUncertainty = scatter }, setting);
     }
 

@@ -289,6 +289,22 @@ public class BoardFileTests
         Assert.Null(Samples.Board("a = " + string.Concat(Enumerable.Repeat(piece, 100_000))).Bench);
 
     [Fact]
+    public void A_file_that_is_no_board_file_at_all_gets_a_short_answer()
+    {
+        var result = Samples.Board("at,value\n" + string.Concat(Enumerable.Repeat("C1,5.2\n", 20_000)));
+        Assert.Null(result.Bench);
+        Assert.InRange(result.Problems.Length, 1, 5);
+        Assert.Contains(result.Problems, p => p.Hint == "is this a board file?");
+    }
+
+    [Fact]
+    public void More_parts_than_the_limit_are_refused_with_the_limit_named()
+    {
+        var parts = string.Join('\n', Enumerable.Range(3, BoardFile.MostParts).Select(i => $$"""R{{i}} = { kind = "resistor", value = "1k 5%", pins = ["VCC", "OUT"] }"""));
+        Assert.Contains("at most 2000 parts", Assert.Single(Samples.WithParts(parts).Problems).ToString(), StringComparison.Ordinal);
+    }
+
+    [Fact]
     public void A_meters_accuracy_is_read_in_the_forms_of_data_sheets()
     {
         foreach (var (text, fraction, counts) in ((string, double, double)[])

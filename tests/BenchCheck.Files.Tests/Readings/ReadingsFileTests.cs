@@ -168,6 +168,10 @@ public class ReadingsFileTests
     }
 
     [Fact]
+    public void A_value_above_its_stated_range_is_a_warning() =>
+        Assert.Contains("above the range", Assert.Single(Samples.Readings("at,value,range\nC1,7,6\n").Problems).Read, StringComparison.Ordinal);
+
+    [Fact]
     public void Rows_of_a_serial_that_comes_back_are_one_board_and_a_warning_says_so()
     {
         var result = Samples.Readings("serial,at,value\nA,C1,1\nB,C1,2\nA,B1,3\nB,B1,4\n");
