@@ -20,6 +20,9 @@ internal sealed class FaultSearch
     /// <summary>How far off the unexplained alternative lets a reading be, as a share of the largest reading of its kind.</summary>
     private const double UnexplainedShare = 0.3;
 
+    /// <summary>Logarithm of the odds against the likeliest fault up to which a fault's evidence is worth every digit.</summary>
+    private const double WorthPolishing = 20;
+
     /// <summary>Probability that a board with one fault has a second: common practice, no source.</summary>
     private const double PairShare = 0.1;
 
@@ -62,7 +65,23 @@ internal sealed class FaultSearch
         if (Alternative(FaultKind.Unexplained, "something that is not on the list of faults", measured, Broadened(measured, noise), double.PositiveInfinity) is { } other)
             faults.Add(other with { IsBroad = true });
         faults.AddRange(new ReadingErrors(probes, lines, fit).Of(Healthy, measured, noise, Math.Log(rates[FaultKind.ReadingError]), best + Hopeless));
+        Polish(faults, measured);
         return faults;
+    }
+
+    /// <summary>Brings the likely faults to the very minimum, so that their evidences can be compared.</summary>
+    private void Polish(List<Fault> faults, double[] measured)
+    {
+        var top = faults.Max(f => f.LogWeight);
+        for (var i = 0; i < faults.Count; i++)
+        {
+            var fault = faults[i];
+            if (fault.LogWeight < top - WorthPolishing || fault.WrongReading >= 0) continue;
+            fault.Model.Forget();
+            var evidence = fit.Polish(fault.Model, measured, fault.Noise, fault.Phi);
+            if (!double.IsNegativeInfinity(evidence.LogEvidence) && evidence.ChiSquared <= fault.Evidence.ChiSquared + 1e-6)
+                faults[i] = fault with { Evidence = evidence, Phi = fit.Phi.ToArray(), Explained = fit.Predicted.ToArray() };
+        }
     }
 
     /// <summary>Fits hypotheses in the order of their forecasts, so that the first fits show which of the others are not worth finishing.</summary>
@@ -196,7 +215,7 @@ internal sealed class FaultSearch
         if (evidence.ChiSquared < giveUpAbove - Hopeless || c.SecondStart == c.FirstStart) return evidence;
         var phi = fit.Phi.ToArray();
         var other = fit.Fit(c.Model, measured, noise, c.Free, c.SecondStart, giveUpAbove);
-        return other.ChiSquared < evidence.ChiSquared || double.IsInfinity(evidence.ChiSquared) ? other : fit.Fit(c.Model, measured, noise, phi, giveUpAbove);
+        return other.ChiSquared < evidence.ChiSquared || double.IsInfinity(evidence.ChiSquared) ? other : fit.Polish(c.Model, measured, noise, phi);
     }
 
     private Fault Record(Compiled c, Evidence evidence, ReadOnlySpan<double> noise)

@@ -92,7 +92,7 @@ internal sealed class NextReadings(Bench bench, ReadingPlan plan, EvidenceFit fi
     private bool TryPredict(Fault fault, Probe[] candidates, double[,] mean, double[,] variance, int h)
     {
         fault.Model.Forget();
-        if (double.IsInfinity(fit.Fit(fault.Model, plan.Measured, fault.Noise, fault.Phi).ChiSquared)) return false;
+        if (double.IsInfinity(fit.Polish(fault.Model, plan.Measured, fault.Noise, fault.Phi).ChiSquared)) return false;
         var p = fault.Model.BoardParameterCount;
         var covariance = new double[p * p];
         fit.Posterior(p, covariance);

@@ -47,6 +47,7 @@ public sealed class NetworkSolver
     private double[] tangent = [];
     private double[] loadedTangent = [];
     private double[] slope = [];
+    private double[] loadedSlope = [];
     private int[] tangentPivot = [];
     private int[] loadedPivot = [];
     private JunctionCurve[] curves = [];
@@ -139,6 +140,15 @@ public sealed class NetworkSolver
         if (!isConnected || StaysOnTangents(meterAmperes))
         {
             for (var k = 0; k < ports; k++) loadedZ[k] = z[k] - meterAmperes * yielding[k];
+            if (isConnected && !gradient.IsEmpty && ports > 0)
+            {
+                // The reading is that of the tangents; its derivatives are those of the slopes where the meter has moved the devices to.
+                for (var k = 0; k < ports; k++) loadedSlope[k] = corners[k] ? slope[k] : curves[k].SlopeOhms(loadedZ[k]);
+                LoadedView(m, 1 / (1 + load * thevenin));
+                FactorTangent(loadedImpedance, loadedSlope, isLive, loadedTangent, loadedPivot);
+                (factor, factorPivot) = (loadedTangent, loadedPivot);
+                share = 1 / (1 + load * thevenin);
+            }
         }
         else
         {
@@ -202,11 +212,8 @@ public sealed class NetworkSolver
         var share = 1 / (1 + m.LoadSiemens * thevenin);
         var openReading = Across(open, m.High, m.Low);
         var view = loadedImpedance.AsSpan(0, ports * ports);
-        for (var k = 0; k < ports; k++)
-        {
-            loadedOpen[k] = openVolts[k] - reach[k] * (m.LoadSiemens * share * openReading - m.TestAmperes);
-            for (var l = 0; l < ports; l++) view[k * ports + l] = impedance[k * ports + l] - reach[k] * m.LoadSiemens * share * seen[l];
-        }
+        LoadedView(m, share);
+        for (var k = 0; k < ports; k++) loadedOpen[k] = openVolts[k] - reach[k] * (m.LoadSiemens * share * openReading - m.TestAmperes);
 
         var loaded = loadedZ.AsSpan(0, ports);
         z.AsSpan(0, ports).CopyTo(loaded);
@@ -214,6 +221,17 @@ public sealed class NetworkSolver
             throw new NoOperatingStateException($"no state of the devices satisfies the equations with the meter connected in condition \"{network.Condition.Name}\"");
         FactorTangent(view, portSolver.Slope, portSolver.IsLive, loadedTangent, loadedPivot);
         return (openReading + m.TestAmperes * thevenin - LuFactor.Dot(seen.AsSpan(0, ports), loaded)) * share;
+    }
+
+    /// <summary>The ports' impedance with the meter's conductance across its leads: a change of rank one.</summary>
+    private void LoadedView(in Measurement m, double share)
+    {
+        for (var k = 0; k < ports; k++)
+        {
+            var row = loadedImpedance.AsSpan(k * ports, ports);
+            impedance.AsSpan(k * ports, ports).CopyTo(row);
+            LuFactor.AddScaled(row, seen.AsSpan(0, ports), -reach[k] * m.LoadSiemens * share);
+        }
     }
 
     /// <summary>Factors view + S; a dead port keeps its current at zero.</summary>
@@ -439,6 +457,7 @@ public sealed class NetworkSolver
         yielding = new double[count];
         mu = new double[count];
         slope = new double[count];
+        loadedSlope = new double[count];
         tangentPivot = new int[count];
         loadedPivot = new int[count];
         isLive = new bool[count];

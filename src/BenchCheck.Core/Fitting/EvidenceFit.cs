@@ -27,6 +27,9 @@ public sealed class EvidenceFit
     /// <summary>Expected decrease of χ² at which the fit stands still.</summary>
     private const double Still = 1e-7;
 
+    /// <summary>The same for a fit whose evidence will be compared: φ is then within about 1e-6 standard deviations of the minimum.</summary>
+    private const double Polished = 1e-12;
+
     /// <summary>Steps that even a hopeless model is given, since the first forecast may lie on the wrong side of a change of state.</summary>
     private const int LeastSteps = 2;
 
@@ -43,6 +46,7 @@ public sealed class EvidenceFit
     private double[] step = [];
     private double[] mean = [];
     private double[] variance = [];
+    private double still = Still;
     private int m;
     private int p;
 
@@ -84,13 +88,20 @@ public sealed class EvidenceFit
         return Run(model, measured, noise, giveUpAbove);
     }
 
-    /// <summary>Minimises from a given φ: cheap where an earlier fit ended there.</summary>
-    public Evidence Fit(
-        BoardModel model, ReadOnlySpan<double> measured, ReadOnlySpan<double> noise, ReadOnlySpan<double> start, double giveUpAbove = double.PositiveInfinity)
+    /// <summary>Minimises from where an earlier fit ended, until nothing moves: the evidence is then good to 1e-6.</summary>
+    public Evidence Polish(BoardModel model, ReadOnlySpan<double> measured, ReadOnlySpan<double> noise, ReadOnlySpan<double> start)
     {
         Prepare(model);
         start.CopyTo(phi);
-        return Run(model, measured, noise, giveUpAbove);
+        still = Polished;
+        try
+        {
+            return Run(model, measured, noise, double.PositiveInfinity);
+        }
+        finally
+        {
+            still = Still;
+        }
     }
 
     private Evidence Run(BoardModel model, ReadOnlySpan<double> measured, ReadOnlySpan<double> noise, double giveUpAbove)
@@ -164,7 +175,7 @@ public sealed class EvidenceFit
             if (!TryInnovate(measured, noise)) return Evidence.None;
             var forecast = ForecastChiSquared(measured);
             var expected = chiSquared - forecast;
-            if (expected < Still * (1 + chiSquared)) return Score(chiSquared, true);
+            if (expected < still * (1 + chiSquared)) return Score(chiSquared, true);
             if (forecast > giveUpAbove && iteration >= LeastSteps) return Score(chiSquared, false);
 
             for (var i = 0; i < p; i++)
