@@ -1,1 +1,3 @@
-return 0;
+using BenchCheck.Commands;
+
+return await BenchCheckCommand.RunAsync(args, Terminal.Standard()).ConfigureAwait(false);

@@ -27,4 +27,7 @@ public sealed record NamedFault(
 {
     /// <summary>The second fault where two are needed to explain the readings.</summary>
     public NamedFault? With { get; init; }
+
+    /// <summary>What slip would have put that value there, in plain words; null when none is known.</summary>
+    public string? Slip { get; init; }
 }

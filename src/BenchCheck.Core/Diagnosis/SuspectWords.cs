@@ -1,6 +1,7 @@
 using System.Collections.Immutable;
 using System.Globalization;
 using BenchCheck.Core.Checking;
+using BenchCheck.Core.Quantities;
 using BenchCheck.Core.Fitting;
 
 namespace BenchCheck.Core.Diagnosis;
@@ -39,9 +40,12 @@ internal sealed class SuspectWords(CheckResult check, ReadingPlan plan)
             .Where((r, i) => i != leader.WrongReading && Math.Abs(r.En) > 1 && Math.Abs(r.Reading.Value - leader.Explained[i]) < 3 * r.StandardUncertainty)
             .Select(r => r.Reading.At).Distinct().ToArray();
         var repairs = repaired.Length == 0 ? "" : $" It explains {string.Join(", ", repaired.Take(5))}{(repaired.Length > 5 ? " and others" : "")}.";
+        var nearest = names[0].NearestPreferred is { } preferred
+            ? $" Nearest preferred value {EngineeringNotation.Format(preferred, names[0].Unit ?? Unit.Ohm, 2)}{(names[0].Slip is { } slip ? $": {slip}" : "")}."
+            : "";
         return string.Create(
             CultureInfo.InvariantCulture,
-            $"{Capital(what)}.{repairs} Chi-squared falls from {check.ChiSquared:G3} to {leader.Evidence.ChiSquared:G3} ({degrees} readings).");
+            $"{Capital(what)}.{nearest}{repairs} Chi-squared falls from {check.ChiSquared:G3} to {leader.Evidence.ChiSquared:G3} ({degrees} readings).");
     }
 
     private static string Capital(string text) => text.Length == 0 ? text : char.ToUpperInvariant(text[0]) + text[1..];

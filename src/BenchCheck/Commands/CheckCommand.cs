@@ -1,0 +1,46 @@
+using System.CommandLine;
+using BenchCheck.Core.Checking;
+using BenchCheck.Core.Diagnosis;
+using BenchCheck.Files;
+
+namespace BenchCheck.Commands;
+
+/// <summary><c>benchcheck check BOARD READINGS</c>: the whole job, once.</summary>
+internal static class CheckCommand
+{
+    public static Command Create(Terminal terminal)
+    {
+        var command = new Command("check", """
+            Checks readings against a board: prediction, estimates, verdicts, suspects, next reading.
+
+            Examples:
+              benchcheck check fan-stage.toml fan-stage.csv
+              benchcheck check fan-stage.toml shelf.csv --serial 0042 --json
+            """);
+        var inputs = Inputs.BoardAndReadings(command, terminal);
+        var options = new CheckOptions(command);
+        var json = new Option<bool>("--json") { Description = "Print one JSON object a board, SI units, instead of tables." };
+        var all = new Option<bool>("--all") { Description = "Show every estimate, not only those that the readings moved." };
+        command.Add(json);
+        command.Add(all);
+        command.SetAction((parsed, cancel) => Task.FromResult(Run(parsed, cancel)));
+        return command;
+
+        int Run(ParseResult parsed, CancellationToken cancel)
+        {
+            if (inputs.Bench(parsed) is not { } bench) return ExitCode.Unusable;
+            if (options.Rates(parsed, bench, terminal) is not { } rates || inputs.Readings(parsed, bench) is not { } sets) return ExitCode.Unusable;
+            var reconciliation = new Reconciliation(bench, options.Settings(parsed), rates);
+            var exit = ExitCode.Agrees;
+            foreach (var set in sets)
+            {
+                var result = reconciliation.Run(set, cancel);
+                if (result.Verdict != BoardVerdict.Agrees) exit = ExitCode.Disagrees;
+                if (parsed.GetValue(json)) terminal.Output.WriteLine(ResultJson.Line(result));
+                else new CheckTables(terminal.Console, result, parsed.GetValue(all)).Write();
+            }
+
+            return exit;
+        }
+    }
+}
