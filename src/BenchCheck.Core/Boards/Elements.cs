@@ -24,7 +24,7 @@ public sealed record CurrentBranch(int From, int To, Coefficient Amperes, Contro
 
 /// <summary>
 /// A semiconductor junction with the current that it controls. With z ≥ 0 the controlling current, v the voltage from anode to cathode:
-/// constant-drop law v = drop while z &gt; 0; junction law v = drop + n·V_T·ln(z / reference) (Shockley).
+/// constant-drop law v = drop while z &gt; 0; junction law v = drop + n·V_T·ln(z / reference) (Shockley); either with a resistance in series.
 /// z / gain flows from anode to cathode (z itself when <paramref name="Gain"/> is the constant one), and z flows from
 /// <paramref name="TransportFrom"/> to <paramref name="TransportTo"/> when these are pins.
 /// </summary>
@@ -32,11 +32,12 @@ public sealed record CurrentBranch(int From, int To, Coefficient Amperes, Contro
 /// <param name="Excess">a second voltage added to the drop (what a saturation voltage holds beyond its junctions); constant zero for none</param>
 /// <param name="Gain">z over the current through the junction itself</param>
 /// <param name="ReferenceAmperes">the current z at which the drop is stated</param>
-/// <param name="Ideality">emission coefficient n; zero for a branch whose voltage does not follow its current (breakdown)</param>
+/// <param name="Ideality">emission coefficient n; for a breakdown the softness of its knee, likewise in thermal voltages a factor e</param>
+/// <param name="SeriesOhms">resistance that z drops its own voltage across, beside the law</param>
 /// <param name="Role">what its conduction means for the state of the part</param>
 public sealed record Junction(
     int Anode, int Cathode, Coefficient Drop, Coefficient Excess, Coefficient Gain, int TransportFrom, int TransportTo,
-    double ReferenceAmperes, double Ideality, JunctionRole Role);
+    double ReferenceAmperes, Coefficient Ideality, Coefficient SeriesOhms, JunctionRole Role);
 
 /// <summary>What a conducting junction is to its part.</summary>
 public enum JunctionRole

@@ -26,6 +26,15 @@ public sealed record ParameterKind(string Name, Unit Unit, bool IsRatioScale, bo
     /// <summary>Gain of a transistor with collector and emitter exchanged; seen only through its saturation voltage.</summary>
     public static readonly ParameterKind ReverseGain = new("reverse gain", Unit.One, true, false);
 
+    /// <summary>Logarithm of how much a gain differs in one condition from its mean over all.</summary>
+    public static readonly ParameterKind GainDrift = new("gain drift", Unit.One, false, false);
+
+    /// <summary>Emission coefficient of a junction: how many thermal voltages its drop rises for a current e times as large.</summary>
+    public static readonly ParameterKind Ideality = new("ideality", Unit.One, true, false);
+
+    /// <summary>Resistance in series with a junction: leads, bulk, and a transistor's base as seen from its collector current.</summary>
+    public static readonly ParameterKind SeriesResistance = new("series resistance", Unit.Ohm, true, false);
+
     /// <summary>Offset voltage of an op-amp's input; what remains of a saturation voltage beyond its junctions.</summary>
     public static readonly ParameterKind Offset = new("offset", Unit.Volt, false, false);
 

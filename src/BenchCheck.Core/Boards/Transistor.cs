@@ -33,6 +33,12 @@ public sealed record Transistor(PartKind Kind, string Designator, ImmutableArray
     /// <summary>Reverse gain of a small transistor: common practice, no source.</summary>
     public static readonly Nominal UsualReverseGain = Nominal.Between(0.5, 10);
 
+    /// <summary>Emission coefficient with what the temperature of the junctions adds to it: common practice, no source.</summary>
+    private static readonly Nominal UsualIdeality = Nominal.Within(1.02, Tolerance.Percent(4));
+
+    /// <summary>Emitter lead, and base resistance over the gain, as the collector current meets them: common practice, no source.</summary>
+    private static readonly Nominal UsualSeriesOhms = Nominal.Between(0.1, 2);
+
     public double ReferenceAmperes { get; init; } = 1e-3;
 
     public bool IsNpn => ReferenceEquals(Kind, Npn);
@@ -40,23 +46,24 @@ public sealed record Transistor(PartKind Kind, string Designator, ImmutableArray
     public override ImmutableArray<PartParameter> Parameters =>
     [
         new(ParameterKind.Gain, Gain), new(ParameterKind.Drop, Drop), new(ParameterKind.ReverseGain, UsualReverseGain),
-        new(ParameterKind.Offset, Saturation),
+        new(ParameterKind.Offset, Saturation), new(ParameterKind.Ideality, UsualIdeality),
+        new(ParameterKind.SeriesResistance, UsualSeriesOhms),
     ];
 
     public override void Describe(PartElements elements, string? setting)
     {
         var drop = Coefficient.Of(1);
         var less = Coefficient.Of(3, -1);
-        var (forward, reverse) = (Coefficient.Of(0), Coefficient.Of(2));
+        var (forward, reverse, ideality, series) = (Coefficient.Of(0), Coefficient.Of(2), Coefficient.Of(4), Coefficient.Of(5));
         if (IsNpn)
         {
-            elements.Add(new Junction(Base, Emitter, drop, default, forward, Collector, Emitter, ReferenceAmperes, 1, JunctionRole.BaseEmitter));
-            elements.Add(new Junction(Base, Collector, drop, less, reverse, Emitter, Collector, ReferenceAmperes, 1, JunctionRole.BaseCollector));
+            elements.Add(new Junction(Base, Emitter, drop, default, forward, Collector, Emitter, ReferenceAmperes, ideality, series, JunctionRole.BaseEmitter));
+            elements.Add(new Junction(Base, Collector, drop, less, reverse, Emitter, Collector, ReferenceAmperes, ideality, series, JunctionRole.BaseCollector));
         }
         else
         {
-            elements.Add(new Junction(Emitter, Base, drop, default, forward, Emitter, Collector, ReferenceAmperes, 1, JunctionRole.BaseEmitter));
-            elements.Add(new Junction(Collector, Base, drop, less, reverse, Collector, Emitter, ReferenceAmperes, 1, JunctionRole.BaseCollector));
+            elements.Add(new Junction(Emitter, Base, drop, default, forward, Emitter, Collector, ReferenceAmperes, ideality, series, JunctionRole.BaseEmitter));
+            elements.Add(new Junction(Collector, Base, drop, less, reverse, Collector, Emitter, ReferenceAmperes, ideality, series, JunctionRole.BaseCollector));
         }
     }
 }

@@ -82,7 +82,7 @@ internal static class Checker
             .Where(p => !plan.Probes.Any(q => q.Quantity == p.Quantity && q.Condition == p.Condition && q.At == p.At && (q.Against ?? bench.Board.Reference) == bench.Board.Reference))
             .ToArray();
         if (places.Length == 0) return [];
-        var model = new BoardModel(bench.Board, places, new bool[places.Length], fit.Model.Solver);
+        var model = BoardModel.AtPlaces(bench.Board, places, fit.Model.Solver);
         var p = model.Parameters.Length;
         var (predicted, fitted, jacobian) = (new double[places.Length], new double[places.Length], new double[places.Length * p]);
         model.Predict(fit.Phi.AsSpan(0, p), fitted, []);

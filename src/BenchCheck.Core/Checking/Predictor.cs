@@ -17,7 +17,7 @@ public static class Predictor
         var board = bench.Board;
         var conditions = board.Conditions.Where(c => !c.IsSmallSignal && !c.SuppliesRemoved).ToArray();
         Probe[] places = [.. conditions.SelectMany(c => board.Nodes.Skip(1).Select(n => new Probe(c.Name, ReadingQuantity.Voltage, n, null, bench.Meters[0], 1)))];
-        var model = new BoardModel(board, places, new bool[places.Length], new NetworkSolver(settings.Law));
+        var model = BoardModel.AtPlaces(board, places, new NetworkSolver(settings.Law));
         double[] start = [.. model.Parameters.Select(p => p.Mean)];
         var predicted = new double[places.Length];
         var jacobian = new double[places.Length * start.Length];

@@ -96,7 +96,7 @@ internal sealed class NextReadings(Bench bench, ReadingPlan plan, EvidenceFit fi
         var p = fault.Model.BoardParameterCount;
         var covariance = new double[p * p];
         fit.Posterior(p, covariance);
-        var model = new BoardModel(fault.Model.Board, candidates, new bool[candidates.Length], solver);
+        var model = BoardModel.AtPlaces(fault.Model.Board, candidates, solver);
         var values = new double[candidates.Length];
         var jacobian = new double[candidates.Length * p];
         try

@@ -14,12 +14,14 @@ internal readonly struct JunctionCurve
 
     private readonly double thermal;
     private readonly double saturation;
+    private readonly double reference;
     private readonly double bendVolts;
     private readonly double bendAmperes;
 
     public JunctionCurve(double drop, double referenceAmperes, double thermalVolts)
     {
         thermal = thermalVolts;
+        reference = referenceAmperes;
         // Capped so that an absurd drop met on the way of a fit neither overflows nor underflows.
         saturation = referenceAmperes * Math.Exp(Math.Clamp(-drop / thermalVolts, -300, 30));
         // slope = thermal / (z + I_s) = LeakageOhms
@@ -36,6 +38,14 @@ internal readonly struct JunctionCurve
 
     public double Amperes(double volts) =>
         volts <= bendVolts ? bendAmperes + (volts - bendVolts) / LeakageOhms : saturation * (Math.Exp(volts / thermal) - 1);
+
+    /// <summary>dv/d(nV_T) at a current, the drop at the reference current held; zero where the curve is a mere leakage.</summary>
+    public double VoltsByThermal(double amperes)
+    {
+        if (amperes <= bendAmperes) return 0;
+        var share = saturation / (amperes + saturation);
+        return Math.Log((amperes + saturation) / reference) + share * Math.Log(reference / saturation);
+    }
 
     /// <summary>dv/dz.</summary>
     public double SlopeOhms(double amperes) => amperes <= bendAmperes ? LeakageOhms : thermal / (amperes + saturation);

@@ -41,7 +41,7 @@ public sealed class Network
     /// <summary>A junction (Row −1) or a limit (Row: the branch row that z overrides, with sign RowSign).</summary>
     internal readonly record struct CompiledPort(
         int High, int Low, Coefficient Drop, Coefficient Excess, Coefficient Gain, int TransportFrom, int TransportTo,
-        double ReferenceAmperes, double Ideality, JunctionRole? Role, int Row, double RowSign, int Part);
+        double ReferenceAmperes, Coefficient Ideality, Coefficient SeriesOhms, JunctionRole? Role, int Row, double RowSign, int Part);
 
     internal CompiledConductor[] Conductors = [];
     internal CompiledVoltage[] Voltages = [];

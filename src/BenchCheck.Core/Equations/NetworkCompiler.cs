@@ -138,7 +138,7 @@ public sealed class NetworkCompiler
             var hasTransport = e.TransportFrom >= 0;
             ports.Add(new(
                 Pin(e.Anode), Pin(e.Cathode), Map(e.Drop), Map(e.Excess), Map(e.Gain), hasTransport ? Pin(e.TransportFrom) : -1,
-                hasTransport ? Pin(e.TransportTo) : -1, e.ReferenceAmperes, e.Ideality, e.Role, -1, 0, partIndex));
+                hasTransport ? Pin(e.TransportTo) : -1, e.ReferenceAmperes, Map(e.Ideality), Map(e.SeriesOhms), e.Role, -1, 0, partIndex));
         }
 
         foreach (var e in elements.Limits)
@@ -146,7 +146,7 @@ public sealed class NetworkCompiler
             // z enters an amplifier's row as −z when it holds the output down, a voltage branch's row as +z.
             var sign = (elements.Amplifiers.Count > 0 ? -1 : 1) * (e.IsUpper ? 1 : -1);
             var (high, low) = e.IsUpper ? (e.Output, e.Pin) : (e.Pin, e.Output);
-            ports.Add(new(Pin(high), Pin(low), Map(e.Margin) with { Factor = -e.Margin.Factor }, default, default, -1, -1, 1, 0, null, drivenRow, sign, partIndex));
+            ports.Add(new(Pin(high), Pin(low), Map(e.Margin) with { Factor = -e.Margin.Factor }, default, default, -1, -1, 1, default, default, null, drivenRow, sign, partIndex));
         }
     }
 

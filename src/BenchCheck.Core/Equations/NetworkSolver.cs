@@ -86,6 +86,7 @@ public sealed class NetworkSolver
             ref readonly var port = ref net.Ports[k];
             openVolts[k] = Across(open, port.High, port.Low);
             for (var l = 0; l < ports; l++) impedance[k * ports + l] = Across(response.AsSpan(l * n, n), port.High, port.Low);
+            if (!corners[k]) impedance[k * ports + k] += port.SeriesOhms.Value(theta);
         }
 
         if (start.Length == ports) start.CopyTo(z);
@@ -318,7 +319,9 @@ public sealed class NetworkSolver
         {
             ref readonly var e = ref network.Ports[k];
             AddTerm(e.Drop, scale * mu[k], gradient);
-            if (law == JunctionLaw.ConstantDrop || e.Role is null) AddTerm(e.Excess, scale * mu[k], gradient);
+            if (corners[k]) AddTerm(e.Excess, scale * mu[k], gradient);
+            else AddTerm(e.SeriesOhms, scale * mu[k] * loaded[k], gradient);
+            if (!corners[k]) AddTerm(e.Ideality, scale * mu[k] * network.ThermalVolts * curves[k].VoltsByThermal(loaded[k]), gradient);
             if (e.Row >= 0 || loaded[k] == 0) continue;
             var gain = e.Gain.Value(theta);
             AddTerm(e.Gain, scale * Across(adj, e.High, e.Low) * loaded[k] / (gain * gain), gradient);
@@ -344,10 +347,10 @@ public sealed class NetworkSolver
         for (var k = 0; k < ports; k++)
         {
             ref readonly var port = ref net.Ports[k];
-            corners[k] = law == JunctionLaw.ConstantDrop || port.Ideality == 0;
+            corners[k] = law == JunctionLaw.ConstantDrop || port.Ideality.IsConstantZero;
             drops[k] = port.Drop.Value(theta);
             if (corners[k]) drops[k] += port.Excess.Value(theta);
-            else curves[k] = new JunctionCurve(drops[k], port.ReferenceAmperes, port.Ideality * net.ThermalVolts);
+            else curves[k] = new JunctionCurve(drops[k], port.ReferenceAmperes, port.Ideality.Value(theta) * net.ThermalVolts);
         }
 
         portSolver.Begin(corners.AsSpan(0, ports));

@@ -13,17 +13,29 @@ namespace BenchCheck.Core.Fitting;
 /// </remarks>
 public sealed class BoardModel
 {
+    /// <summary>Standard deviation of the logarithm of a gain between conditions: an Early voltage of about 80 V over some volts.</summary>
+    private const double GainDrift = 0.06;
+
+    /// <summary>Standard deviation of a drop between conditions, volts.</summary>
+    private const double DropDrift = 2.5e-3;
+
     private readonly NetworkSolver solver;
     private readonly Setup[] setups;
     private readonly double[] theta;
     private readonly double[] gradient;
     private readonly int[] scaleOfReading;
     private readonly FitParameter[] fitted;
+    private readonly Drift[] drifts = [];
 
     /// <param name="probes">where the board is read; the order of predictions</param>
     /// <param name="hasScaleError">which readings carry the meter's scale error: those whose uncertainty was not stated</param>
     /// <param name="solver">shared workspace; any number of models may use one in turn</param>
     public BoardModel(Board board, IReadOnlyList<Probe> probes, IReadOnlyList<bool> hasScaleError, NetworkSolver solver)
+        : this(board, probes, hasScaleError, solver, Conditions(probes))
+    {
+    }
+
+    private BoardModel(Board board, IReadOnlyList<Probe> probes, IReadOnlyList<bool> hasScaleError, NetworkSolver solver, string[] driftingConditions)
     {
         ArgumentNullException.ThrowIfNull(board);
         ArgumentNullException.ThrowIfNull(probes);
@@ -57,10 +69,14 @@ public sealed class BoardModel
             scaleOfReading[j] = index;
         }
 
+        if (driftingConditions.Length > 1) drifts = Drifts(driftingConditions, parameters);
         Parameters = parameters.ToImmutable();
         fitted = [.. Parameters];
         setups = Arrange(board, probes);
     }
+
+    /// <summary>The board read where no reading was taken: no scale errors, no drift between conditions, only the board's own parameters.</summary>
+    public static BoardModel AtPlaces(Board board, IReadOnlyList<Probe> places, NetworkSolver solver) => new(board, places, new bool[places.Count], solver, []);
 
     internal NetworkSolver Solver => solver;
 
@@ -89,6 +105,7 @@ public sealed class BoardModel
         Load(phi);
         foreach (var setup in setups)
         {
+            Apply(setup.Network.Condition.Name, phi);
             solver.Solve(setup.Network, theta, setup.PortStart);
             solver.PortCurrents.CopyTo(setup.PortStart);
             for (var k = 0; k < setup.Readings.Length; k++)
@@ -113,6 +130,11 @@ public sealed class BoardModel
                 }
 
                 if (scaleOfReading[j] >= 0) row[scaleOfReading[j]] = value;
+                foreach (var drift in drifts)
+                {
+                    if (drift.Condition == setup.Network.Condition.Name)
+                        row[drift.Parameter] = scale * gradient[drift.ThetaIndex] * (drift.IsRatio ? theta[drift.ThetaIndex] : 1);
+                }
             }
         }
     }
@@ -121,6 +143,7 @@ public sealed class BoardModel
     public OperatingPoint Operate(ReadOnlySpan<double> phi, Condition condition)
     {
         Load(phi);
+        Apply(condition.Name, phi);
         var network = NetworkCompiler.Compile(Board, Table, condition);
         solver.Solve(network, theta);
         return OperatingPoint.Of(network, solver, theta);
@@ -137,7 +160,47 @@ public sealed class BoardModel
         for (var i = 0; i < BoardParameterCount; i++)
         {
             var parameter = fitted[i];
-            theta[parameter.ThetaIndex] = parameter.IsLogarithmic ? Math.Exp(Math.Clamp(phi[i], -60, 60)) : phi[i];
+            theta[parameter.ThetaIndex] = parameter.Value(phi[i]);
+        }
+    }
+
+    private static string[] Conditions(IReadOnlyList<Probe> probes) =>
+        [.. probes.Where(p => p.Quantity != ReadingQuantity.Resistance).Select(p => p.Condition).Distinct(StringComparer.Ordinal)];
+
+    /// <summary>
+    /// What the transistor model leaves out when a board is read in several conditions: the gain and the drop of one transistor are not quite
+    /// the same in each, because the collector voltage (Early effect) and the warmth differ. Common practice, no source.
+    /// </summary>
+    private Drift[] Drifts(string[] conditions, ImmutableArray<FitParameter>.Builder parameters)
+    {
+        var result = new List<Drift>();
+        foreach (var part in Board.Parts.OfType<Transistor>())
+        {
+            foreach (var condition in conditions)
+            {
+                for (var k = 0; k < 2; k++)
+                {
+                    var kind = part.Parameters[k].Kind;
+                    var (isRatio, sigma) = kind == ParameterKind.Gain ? (true, GainDrift) : (false, DropDrift);
+                    result.Add(new Drift(condition, Table.IndexOf(part, k, condition), parameters.Count, isRatio));
+                    parameters.Add(new FitParameter(
+                        part.Designator, isRatio ? ParameterKind.GainDrift : ParameterKind.Offset, condition, Quantities.Nominal.Exactly(0), -1, false, 0, sigma));
+                }
+            }
+        }
+
+        return [.. result];
+    }
+
+    private void Apply(string condition, ReadOnlySpan<double> phi)
+    {
+        if (drifts.Length == 0) return;
+        Load(phi);
+        foreach (var drift in drifts)
+        {
+            if (drift.Condition != condition) continue;
+            if (drift.IsRatio) theta[drift.ThetaIndex] *= Math.Exp(phi[drift.Parameter]);
+            else theta[drift.ThetaIndex] += phi[drift.Parameter];
         }
     }
 
@@ -194,6 +257,9 @@ public sealed class BoardModel
         if (dot > 0 && board.Find(at[..dot]) is { } owner && owner.Kind.Pins.IndexOf(at[(dot + 1)..]) is >= 0 and var pin) return (owner.Designator, pin);
         return board.Find(at) is { } part ? (part.Designator, 0) : throw new ArgumentException($"the board has no part or pin \"{at}\"", nameof(at));
     }
+
+    /// <summary>A parameter that is a little different in one condition.</summary>
+    private readonly record struct Drift(string Condition, int ThetaIndex, int Parameter, bool IsRatio);
 
     private sealed record Setup(Network Network, int[] Readings, Measurement[] Measurements)
     {

@@ -21,7 +21,10 @@ public sealed record FitParameter(
     public bool IsUnknown => double.IsPositiveInfinity(Sigma);
 
     /// <summary>Value in SI units at φ.</summary>
-    public double Value(double phi) => IsLogarithmic ? Math.Exp(phi) : phi;
+    public double Value(double phi) => IsLogarithmic ? Math.Exp(Math.Clamp(phi, -LogReach, LogReach)) : phi;
+
+    /// <summary>Farthest logarithm that is followed: 26 decades either way.</summary>
+    private const double LogReach = 60;
 
     /// <summary>The parameter for one entry of θ; null when its tolerance is zero, so that there is nothing to fit.</summary>
     public static FitParameter? Of(BoardParameter entry, int thetaIndex)

@@ -116,7 +116,7 @@ internal sealed class FreshRefit(IReadOnlyList<Probe> probes)
         for (var k = 0; k < ports; k++)
         {
             var port = network.Ports[k];
-            curves[k] = new JunctionCurve(port.Drop.Value(theta), port.ReferenceAmperes, port.Ideality * network.ThermalVolts);
+            curves[k] = new JunctionCurve(port.Drop.Value(theta), port.ReferenceAmperes, port.Ideality.Value(theta) * network.ThermalVolts);
             void Column(int row, double value)
             {
                 if (row >= 0) c[row, k] += value;
@@ -142,7 +142,7 @@ internal sealed class FreshRefit(IReadOnlyList<Probe> probes)
             right.SetSubVector(0, n, b);
             for (var k = 0; k < ports; k++)
             {
-                full[n + k, n + k] = -curves[k].SlopeOhms(z[k]);
+                full[n + k, n + k] = -curves[k].SlopeOhms(z[k]) - network.Ports[k].SeriesOhms.Value(theta);
                 right[n + k] = curves[k].Volts(z[k]) - curves[k].SlopeOhms(z[k]) * z[k];
             }
 
@@ -151,7 +151,8 @@ internal sealed class FreshRefit(IReadOnlyList<Probe> probes)
             var worst = 0.0;
             for (var k = 0; k < ports; k++)
             {
-                var (volts, amperes) = ((d * x)[k], solution[n + k]);
+                var amperes = solution[n + k];
+                var volts = (d * x)[k] - network.Ports[k].SeriesOhms.Value(theta) * amperes;
                 var next = amperes > z[k] ? amperes : curves[k].Amperes(volts);
                 var miss = Math.Abs(volts - curves[k].Volts(amperes));
                 worst = Math.Max(worst, amperes > z[k] ? miss : Math.Min(miss, Math.Abs(next - amperes) * 1e3));
