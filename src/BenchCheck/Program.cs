@@ -1,3 +1,3 @@
 using BenchCheck.Commands;
 
-return await BenchCheckCommand.RunAsync(args, Terminal.Standard()).ConfigureAwait(false);
+return await BenchCheckCommand.RunAsync(args, BenchCheck.Commands.Terminal.Standard()).ConfigureAwait(false);

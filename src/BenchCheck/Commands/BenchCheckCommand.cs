@@ -1,5 +1,6 @@
 using System.CommandLine;
 using BenchCheck.Core.Equations;
+using BenchCheck.Screens;
 
 namespace BenchCheck.Commands;
 
@@ -10,8 +11,9 @@ internal static class BenchCheckCommand
     {
         var root = new RootCommand("Reconciles measured node voltages of a small analog board with what its parts list predicts.")
         {
-            CheckCommand.Create(terminal), PredictCommand.Create(terminal), NextCommand.Create(terminal),
+            CheckCommand.Create(terminal), PredictCommand.Create(terminal), NextCommand.Create(terminal), OpenCommand.Create(terminal),
         };
+        root.SetAction(_ => ScreenProgram.Run(null, null, terminal.Error));
         var parsed = root.Parse(args);
         if (parsed.Errors.Count > 0)
         {
