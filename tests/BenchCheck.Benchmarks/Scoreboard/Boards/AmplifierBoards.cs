@@ -20,7 +20,6 @@ internal static class AmplifierBoards
         .R("R1", "VCC", "B1", 1e6).R("R2", "B1", "GND", 1.5e6)
         .Npn("Q1", "VCC", "B1", "OUT", 200, 450)
         .R("R3", "OUT", "GND", 22e3).R("R4", "OUT", "LINE", 10e3).R("R5", "LINE", "GND", 47e3)
-        .Unpowered()
         .Bench();
 
     private static Bench SoilStage() => new BoardDraft("Soil-probe amplifier", BoardOrigin.NewBuild)

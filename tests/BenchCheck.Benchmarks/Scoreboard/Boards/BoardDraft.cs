@@ -54,13 +54,7 @@ internal sealed class BoardDraft(string title, BoardOrigin origin)
     public BoardDraft With(string condition, string name, string position) =>
         Add(Condition.Powered with { Name = condition, Switches = ImmutableDictionary<string, string>.Empty.Add(name, position) });
 
-    public BoardDraft Unpowered() => Add(Condition.Powered with { Name = "unpowered", SuppliesRemoved = true });
-
-    public Bench Bench()
-    {
-        if (conditions is [{ SuppliesRemoved: true }]) conditions.Insert(0, Condition.Powered);
-        return new Bench(new Board(title, "GND", origin, [.. parts], [.. conditions]), [Meter.Usual], []);
-    }
+    public Bench Bench() => new(new Board(title, "GND", origin, [.. parts], [.. conditions]), [Meter.Usual], []);
 
     /// <summary>No supply on a bench is steadier than 10 mV.</summary>
     private static Tolerance SupplyTolerance(double volts, double percent) => Tolerance.Absolute(Math.Max(0.01, Math.Abs(volts) * percent / 100));

@@ -12,7 +12,6 @@ internal static class PassiveBoards
         .Supply("V1", "VREF", 5, 0.5)
         .R("R1", "VREF", "TOP", 1e3, 1).R("R2", "TOP", "A", 10e3, 1).R("R3", "A", "GND", 10e3, 1).R("R4", "TOP", "B", 10e3, 1).R("R5", "B", "GND", 12e3, 2)
         .R("R6", "A", "B", 100e3, 2).R("R7", "A", "FA", 47e3, 2).R("R8", "FA", "GND", 330e3, 2)
-        .Unpowered()
         .Bench();
 
     private static Bench TankSender() => new BoardDraft("Tank-level sender", BoardOrigin.Service)

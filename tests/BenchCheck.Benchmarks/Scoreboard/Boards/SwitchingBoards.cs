@@ -38,7 +38,6 @@ internal static class SwitchingBoards
         .Npn("Q1", "C1", "B1", "GND", 60, 300)
         .Coil("L1", "VCC", "C1", 1.1e3).D("D1", "C1", "VCC").R("R3", "VCC", "A2", 4.7e3).Led("D2", "A2", "C1", 1.9)
         .With("shut", "V2", 0).With("open", "V2", 5)
-        .Unpowered()
         .Bench();
 
     private static Bench BatteryWatch() => new BoardDraft("Battery watch", BoardOrigin.NewBuild)

@@ -32,7 +32,7 @@ public sealed class Visibility(Bench bench, TruthSolver solver)
         {
             var (h, y) = (before.Value(rows[i]), faults.Any(f => f.Row == i) ? values[i] : faulty.Value(rows[i]));
             if (!double.IsFinite(h) || !double.IsFinite(y)) continue;
-            var (meter, spread) = (MeterUncertainty(rows[i].Quantity, h), Spread(rows[i]));
+            var (meter, spread) = (MeterUncertainty(bench.Meters[0], rows[i].Quantity, h), Spread(rows[i]));
             worst = Math.Max(worst, Math.Abs(y - h) / Math.Sqrt(meter * meter + spread * spread));
         }
 
@@ -40,8 +40,6 @@ public sealed class Visibility(Bench bench, TruthSolver solver)
     }
 
     /// <summary>Standard uncertainty of the meter's specification at a value: both parts rectangular (JCGM 100:2008, 4.3.7).</summary>
-    public double MeterUncertainty(ReadingQuantity quantity, double value) => MeterUncertainty(bench.Meters[0], quantity, value);
-
     public static double MeterUncertainty(Meter meter, ReadingQuantity quantity, double value)
     {
         var function = meter.FunctionFor(quantity)!;

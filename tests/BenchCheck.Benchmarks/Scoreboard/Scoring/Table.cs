@@ -22,7 +22,7 @@ internal sealed class Table(params string[] head)
             output.WriteLine("  " + string.Join("  ", row.Select((cell, c) => c == 0 || (c == row.Length - 1 && cell.Contains(' ')) ? cell.PadRight(widths[c]) : cell.PadLeft(widths[c]))).TrimEnd());
     }
 
-    /// <summary>"93.4 % (57/61)" with the exact share; a dash when there is nothing to count.</summary>
+    /// <summary>"93.4 %"; a dash when there is nothing to count.</summary>
     public static string Share(int part, int whole) =>
         whole == 0 ? "-" : string.Create(CultureInfo.InvariantCulture, $"{100.0 * part / whole:F1} %");
 
