@@ -10,7 +10,7 @@ public static class TruthCheck
 {
     private const double RelativeLimit = 1e-10;
     private const double FloorAmperes = 1e-14;
-    private const int Boards = 2000;
+    private const int Boards = 8000;
 
     public static Command Command
     {
@@ -95,7 +95,7 @@ public static class TruthCheck
         return worst <= limit;
     }
 
-    /// <summary>Kirchhoff's current law at every node of many random boards, half of them faulty, met at every place where a meter was put.</summary>
+    /// <summary>Kirchhoff's current law at every node of many random boards, most of them faulty, met at every place where a meter was put.</summary>
     private static bool Kirchhoff(TextWriter output)
     {
         var solver = new TruthSolver();

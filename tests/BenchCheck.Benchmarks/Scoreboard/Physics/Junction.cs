@@ -23,10 +23,13 @@ public readonly record struct Junction(double ReferenceAmperes, double Volts, do
         return (ReferenceAmperes * (e * (1 + beyond) - floor), ReferenceAmperes * e / Slope);
     }
 
-    /// <summary>The voltage that a step of the solver may reach: above the known point a rise counts by its logarithm.</summary>
+    /// <summary>Below this many slopes under the known point (some picoamperes at 1 mA there) the current does not matter to any step.</summary>
+    private const double Faintest = 20;
+
+    /// <summary>The voltage that a step of the solver may reach: once a current flows that matters, a rise counts by its logarithm.</summary>
     public double Limit(double from, double to)
     {
-        var start = Math.Max(from, Volts);
+        var start = Math.Max(from, Volts - Faintest * Slope);
         return to <= start ? to : start + Slope * double.LogP1((to - start) / Slope);
     }
 }

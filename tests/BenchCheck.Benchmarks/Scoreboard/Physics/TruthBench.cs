@@ -35,8 +35,13 @@ public sealed class TruthBench(PhysicalBoard board, Meter meter, TruthSolver sol
             var amperes = function.TestVolts / range;
             var driven = board.Circuit(board.Design.FindCondition(place.Condition)!);
             driven.AddDiode(a, b, new Junction(amperes, OpenVolts, OpenSlope), OpenOhms);
-            var ohms = Counted(solver.Solve(driven, new Load(a, b, 0, amperes))).Between(a, b) / amperes;
-            if (Math.Abs(ohms) <= range) return ohms;
+            var solution = solver.Solve(driven, new Load(a, b, 0, amperes));
+            var ohms = solution.Between(a, b) / amperes;
+
+            // Beyond full scale the range shows nothing, whether or not the board stands still there: two floating transistors can latch.
+            if (Math.Abs(ohms) > range) continue;
+            Counted(solution);
+            return ohms;
         }
 
         return double.PositiveInfinity;

@@ -17,13 +17,19 @@ public sealed class TruthSolver
     /// <summary>Limit of Σi at a node: this fraction of the largest current there …</summary>
     public const double ResidualFraction = 1e-12;
 
-    /// <summary>… and this many amperes, which the rounding of 24 V over the smallest resistance (50 mΩ) can make; over a meter's 10 MΩ it is 10 µV.</summary>
-    public const double ResidualFloor = 1e-12;
+    /// <summary>… and this many amperes, which the rounding of 24 V over the smallest resistance (50 mΩ) can make; over a meter's 10 MΩ it is 20 µV.</summary>
+    public const double ResidualFloor = 2e-12;
 
     /// <summary>Volts that no junction moves any more; two full steps follow, each of which squares the error.</summary>
     private const double StandsStill = 1e-7;
 
-    private const int MostIterations = 120;
+    /// <summary>More than any junction of these boards sees: an iterate beyond it is a wild one.</summary>
+    private const double FarthestVolts = 100;
+
+    private const int MostIterations = 500;
+
+    /// <summary>Each time that so many steps have not settled it, steps go half as far: what swings about the solution then stands still.</summary>
+    private const int Patience = 70;
 
     private double[] matrix = [];
     private double[] right = [];
@@ -40,15 +46,26 @@ public sealed class TruthSolver
         if (start is not null) start.Volts.CopyTo(x, 0);
         var solved = Newton(circuit, load, x, 0, 1) || ByConductance(circuit, load, x) || BySources(circuit, load, x);
         if (solved) Polish(circuit, load, x);
-        return new TruthSolution(circuit, x, Excess(circuit, load, x));
+        return new TruthSolution(circuit, x, Excess(circuit, load, x, 0, 1));
     }
 
     private bool ByConductance(TruthCircuit circuit, Load load, double[] x)
     {
         Array.Clear(x);
-        for (var siemens = 1e-1; siemens > 1e-13; siemens /= 4)
+        var (siemens, ratio) = (0.1, 10.0);
+        if (!Newton(circuit, load, x, siemens, 1)) return false;
+        while (siemens > 1e-14)
         {
-            if (!Newton(circuit, load, x, siemens, 1)) return false;
+            var trial = (double[])x.Clone();
+            if (Newton(circuit, load, trial, siemens / ratio, 1))
+            {
+                trial.CopyTo(x, 0);
+                (siemens, ratio) = (siemens / ratio, ratio * 2);
+            }
+            else if ((ratio = Math.Sqrt(ratio)) < 1.01)
+            {
+                return false;
+            }
         }
 
         return Newton(circuit, load, x, 0, 1);
@@ -89,6 +106,7 @@ public sealed class TruthSolver
 
         for (var iteration = 0; iteration < MostIterations; iteration++)
         {
+            var share = Math.Pow(0.5, iteration / Patience);
             Assemble(circuit, load, v, across, scale);
             if (!DenseLu.Solve(matrix.AsSpan(0, n * n), n, right.AsSpan(0, n))) return false;
             var (free, still) = (true, iteration > 0);
@@ -102,14 +120,15 @@ public sealed class TruthSolver
             {
                 var (a, c, law) = JunctionOf(circuit, k);
                 var target = Volts(x, a) - Volts(x, c);
-                var next = law.Limit(v[k], target);
+                var next = law.Limit(v[k], Math.Clamp(target, -FarthestVolts, FarthestVolts));
+                next = v[k] + (next - v[k]) * share;
                 free &= Math.Abs(next - target) < StandsStill;
                 still &= Math.Abs(next - v[k]) < StandsStill;
                 v[k] = next;
             }
 
             // A floating node wanders by the rounding of its leakage: there Kirchhoff's law alone decides.
-            if (free && (still || (across == 0 && scale == 1 && Excess(circuit, load, x) <= 1))) return true;
+            if (free && (still || Excess(circuit, load, x, across, scale) <= 1)) return true;
         }
 
         return false;
@@ -120,7 +139,7 @@ public sealed class TruthSolver
     {
         var n = circuit.Size;
         var v = new double[circuit.Diodes.Count + 2 * circuit.Bipolars.Count];
-        var best = Excess(circuit, load, x);
+        var best = Excess(circuit, load, x, 0, 1);
         for (var step = 0; step < 2; step++)
         {
             for (var k = 0; k < v.Length; k++)
@@ -132,7 +151,7 @@ public sealed class TruthSolver
             Assemble(circuit, load, v, 0, 1);
             if (!DenseLu.Solve(matrix.AsSpan(0, n * n), n, right.AsSpan(0, n))) return;
             var trial = right.AsSpan(0, n).ToArray();
-            var excess = Excess(circuit, load, trial);
+            var excess = Excess(circuit, load, trial, 0, 1);
             if (!(excess < best)) return;
             best = excess;
             trial.CopyTo(x, 0);
@@ -211,15 +230,21 @@ public sealed class TruthSolver
     }
 
     /// <summary>Worst Σi over its limit, from the devices' own laws; at most one where Kirchhoff's law holds.</summary>
-    private double Excess(TruthCircuit circuit, Load load, double[] x)
+    private double Excess(TruthCircuit circuit, Load load, double[] x, double across, double scale)
     {
         var n = circuit.Size;
         var sum = new double[n];
         Array.Clear(largest, 0, n);
         for (var i = 0; i < n; i++) Flow(i, -1, TruthCircuit.LeakageSiemens * x[i]);
-        foreach (var b in circuit.Branches) Flow(b.A, b.B, b.Siemens * (Volts(x, b.A) - Volts(x, b.B) - b.Volts));
-        foreach (var c in circuit.Currents) Flow(c.A, c.B, c.Amperes);
-        Flow(load.A, load.B, load.Siemens * (Volts(x, load.A) - Volts(x, load.B)) - load.Amperes);
+        foreach (var b in circuit.Branches) Flow(b.A, b.B, b.Siemens * (Volts(x, b.A) - Volts(x, b.B) - b.Volts * scale));
+        foreach (var c in circuit.Currents) Flow(c.A, c.B, c.Amperes * scale);
+        Flow(load.A, load.B, load.Siemens * (Volts(x, load.A) - Volts(x, load.B)) - load.Amperes * scale);
+        for (var k = 0; k < circuit.Diodes.Count + 2 * circuit.Bipolars.Count; k++)
+        {
+            var (a, c, _) = JunctionOf(circuit, k);
+            Flow(a, c, across * (Volts(x, a) - Volts(x, c)));
+        }
+
         foreach (var d in circuit.Diodes) Flow(d.Anode, d.Cathode, d.Law.At(Volts(x, d.Anode) - Volts(x, d.Cathode)).Amperes);
         foreach (var q in circuit.Bipolars)
         {
