@@ -1,6 +1,14 @@
 using System.CommandLine;
 using BenchCheck.Benchmarks.Scoreboard;
 using BenchCheck.Benchmarks.Scoreboard.Commands;
+using BenchCheck.Benchmarks.Speed;
 
-var root = new RootCommand("Measures of the program against known truth.") { TruthCheck.Command, ScoreboardCommand.Create(), IsolateCommand.Create() };
+var root = new RootCommand("Measures of the program against known truth, and of its speed beside slower ways.")
+{
+    TruthCheck.Command,
+    ScoreboardCommand.Create(),
+    IsolateCommand.Create(),
+    FitBenchmark.Command,
+    RankingBenchmark.Command,
+};
 return root.Parse(args).Invoke();

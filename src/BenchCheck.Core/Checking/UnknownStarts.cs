@@ -14,17 +14,18 @@ internal static class UnknownStarts
         {
             var parameter = model.Parameters[k];
             if (!parameter.IsUnknown || !parameter.IsLogarithmic) continue;
-            var (at, least) = (parameter.Mean, double.PositiveInfinity);
+            StartPoint? chosen = null;
+            var least = double.PositiveInfinity;
             foreach (var decade in Decades)
             {
-                model.Forget();
-                var start = parameter.Mean + decade * Math.Log(10);
-                var forecast = fit.Forecast(model, plan.Measured, plan.Noise, k, start);
-                if (forecast < least) (at, least) = (start, forecast);
+                if (fit.Linearise(model, k, parameter.Mean + decade * Math.Log(10)) is not { } start) continue;
+                var forecast = fit.Forecast(model, plan.Measured, plan.Noise, start);
+                if (forecast < least) (chosen, least) = (start, forecast);
             }
 
+            if (chosen is null) continue;
             model.Forget();
-            var evidence = fit.Fit(model, plan.Measured, plan.Noise, k, at, double.PositiveInfinity);
+            var evidence = fit.Fit(model, plan.Measured, plan.Noise, chosen, double.PositiveInfinity);
             if (evidence.ChiSquared < best.ChiSquared - 1e-6) best = evidence;
             else best = fit.Fit(model, plan.Measured, plan.Noise);
         }

@@ -36,6 +36,7 @@ internal sealed class FaultSearch
     private readonly IReadOnlyList<bool> hasScaleError;
     private readonly EvidenceFit fit = new();
     private readonly List<Compiled> compiled;
+    private StartPoint? healthyStart;
     private readonly FaultRates rates;
 
     public FaultSearch(Board board, IReadOnlyList<Probe> probes, IReadOnlyList<bool> hasScaleError, NetworkSolver solver, FaultRates rates)
@@ -150,7 +151,9 @@ internal sealed class FaultSearch
     private Fault? Alternative(string kind, string words, double[] measured, double[] noise, double best)
     {
         Healthy.Forget();
-        var evidence = fit.Fit(Healthy, measured, noise, -1, 0, best + Hopeless);
+        healthyStart ??= fit.Linearise(Healthy);
+        if (healthyStart is null) return null;
+        var evidence = fit.Fit(Healthy, measured, noise, healthyStart, best + Hopeless);
         return double.IsNegativeInfinity(evidence.LogEvidence) ? null : new Fault(
             [new NamedFault(kind, [], [], [], [], null, null, null, words)], [Math.Log(rates[kind])], evidence, Healthy, fit.Phi.ToArray(), noise, fit.Predicted.ToArray());
     }
@@ -185,37 +188,43 @@ internal sealed class FaultSearch
         return new Compiled(hypothesis, model, free);
     }
 
-    /// <summary>χ² to expect of a hypothesis; remembers for one with a free number which two starts promise most.</summary>
+    /// <summary>χ² to expect of a hypothesis; remembers which two starts promise most.</summary>
     private double Forecast(Compiled c, double[] measured, double[] noise)
     {
-        c.Model.Forget();
-        if (c.Free < 0) return fit.Forecast(c.Model, measured, noise, -1, 0);
-        var parameter = c.Model.Parameters[c.Free];
-        var first = double.PositiveInfinity;
-        var second = double.PositiveInfinity;
-        (c.FirstStart, c.SecondStart) = (parameter.Mean, parameter.Mean);
-        foreach (var offset in StartsInSigma)
+        c.Starts ??= Starts(c);
+        var (first, second) = (double.PositiveInfinity, double.PositiveInfinity);
+        (c.First, c.Second) = (null, null);
+        foreach (var start in c.Starts)
         {
-            var start = parameter.Mean + offset * parameter.Sigma;
-            var chiSquared = fit.Forecast(c.Model, measured, noise, c.Free, start);
-            if (chiSquared < first) (second, c.SecondStart, first, c.FirstStart) = (first, c.FirstStart, chiSquared, start);
-            else if (chiSquared < second) (second, c.SecondStart) = (chiSquared, start);
+            var chiSquared = fit.Forecast(c.Model, measured, noise, start);
+            if (chiSquared < first) (second, c.Second, first, c.First) = (first, c.First, chiSquared, start);
+            else if (chiSquared < second) (second, c.Second) = (chiSquared, start);
         }
 
         return first;
     }
 
+    /// <summary>The prior mean, and for a free number several values of it.</summary>
+    private StartPoint[] Starts(Compiled c)
+    {
+        if (c.Free < 0) return fit.Linearise(c.Model) is { } only ? [only] : [];
+        var parameter = c.Model.Parameters[c.Free];
+        return [.. StartsInSigma.Select(offset => fit.Linearise(c.Model, c.Free, parameter.Mean + offset * parameter.Sigma)).OfType<StartPoint>()];
+    }
+
     private Evidence Fit(Compiled c, double[] measured, double[] noise, double giveUpAbove)
     {
+        if (c.First is null) return Evidence.None;
         c.Model.Forget();
-        if (c.Free < 0) return fit.Fit(c.Model, measured, noise, -1, 0, giveUpAbove);
+        var evidence = fit.Fit(c.Model, measured, noise, c.First, giveUpAbove);
 
         // A fit can have a minimum on either side of the nominal value: where the first disappoints, the second start is tried too.
-        var evidence = fit.Fit(c.Model, measured, noise, c.Free, c.FirstStart, giveUpAbove);
-        if (evidence.ChiSquared < giveUpAbove - Hopeless || c.SecondStart == c.FirstStart) return evidence;
+        if (evidence.ChiSquared < giveUpAbove - Hopeless || c.Second is null) return evidence;
         var phi = fit.Phi.ToArray();
-        var other = fit.Fit(c.Model, measured, noise, c.Free, c.SecondStart, giveUpAbove);
-        return other.ChiSquared < evidence.ChiSquared || double.IsInfinity(evidence.ChiSquared) ? other : fit.Polish(c.Model, measured, noise, phi);
+        c.Model.Forget();
+        var other = fit.Fit(c.Model, measured, noise, c.Second, giveUpAbove);
+        if (other.ChiSquared < evidence.ChiSquared || double.IsInfinity(evidence.ChiSquared)) return other;
+        return evidence.ChiSquared > giveUpAbove ? evidence : fit.Polish(c.Model, measured, noise, phi);
     }
 
     private Fault Record(Compiled c, Evidence evidence, ReadOnlySpan<double> noise)
@@ -234,9 +243,12 @@ internal sealed class FaultSearch
         /// <summary>Logarithm of the prior rate, all names together.</summary>
         public double LogRate => Math.Log(LogRates.Sum(Math.Exp));
 
-        /// <summary>Where the fit of the free number begins, and where it begins anew when that disappoints.</summary>
-        public double FirstStart { get; set; }
+        /// <summary>Where fits may begin, linearised once; null until first needed.</summary>
+        public StartPoint[]? Starts { get; set; }
 
-        public double SecondStart { get; set; }
+        /// <summary>The start that promises most for the readings at hand.</summary>
+        public StartPoint? First { get; set; }
+
+        public StartPoint? Second { get; set; }
     }
 }

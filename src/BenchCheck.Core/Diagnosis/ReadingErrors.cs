@@ -24,13 +24,14 @@ internal sealed class ReadingErrors(IReadOnlyList<Probe> probes, IReadOnlyList<i
         if (m < 2 || double.IsNegativeInfinity(logRate)) return found;
         var rate = logRate - Math.Log(m);
         var p = healthy.Parameters.Length;
+        if (fit.Linearise(healthy) is not { } start) return found;
         for (var i = 0; i < m; i++)
         {
             var breadth = Breadth(measured, i);
             var altered = (double[])noise.Clone();
             altered[i] = breadth * breadth;
             healthy.Forget();
-            var evidence = fit.Fit(healthy, measured, altered, -1, 0, giveUpAbove);
+            var evidence = fit.Fit(healthy, measured, altered, start, giveUpAbove);
             if (!double.IsFinite(evidence.LogEvidence)) continue;
             var covariance = new double[p * p];
             fit.Posterior(p, covariance);

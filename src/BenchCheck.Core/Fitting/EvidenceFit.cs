@@ -33,6 +33,14 @@ public sealed class EvidenceFit
     /// <summary>Steps that even a hopeless model is given, since the first forecast may lie on the wrong side of a change of state.</summary>
     private const int LeastSteps = 2;
 
+    /// <summary>Forecast over the limit beyond which one step is enough to give up.</summary>
+    private const double FarOff = 10;
+
+    /// <summary>How short a step may become before a fit is taken to stand still; one whose forecast is hopeless is not searched as far.</summary>
+    private const double SmallestStep = 1e-4;
+
+    private const double SmallestHopelessStep = 0.1;
+
     private double[] jacobian = [];
     private double[] trialJacobian = [];
     private double[] weighted = [];
@@ -47,6 +55,7 @@ public sealed class EvidenceFit
     private double[] mean = [];
     private double[] variance = [];
     private double still = Still;
+    private bool isLinearised;
     private int m;
     private int p;
 
@@ -77,15 +86,32 @@ public sealed class EvidenceFit
         return Run(model, measured, noise, double.PositiveInfinity);
     }
 
-    /// <summary>Minimises from the prior mean with one parameter moved.</summary>
-    /// <param name="movedParameter">its position in φ; −1 for none</param>
-    /// <param name="movedTo">its start</param>
+    /// <summary>Minimises from a start that was linearised before.</summary>
     /// <param name="giveUpAbove">χ² above which a model is of no interest: the fit stops as soon as the linear forecast of its minimum lies above</param>
-    public Evidence Fit(BoardModel model, ReadOnlySpan<double> measured, ReadOnlySpan<double> noise, int movedParameter, double movedTo, double giveUpAbove)
+    public Evidence Fit(BoardModel model, ReadOnlySpan<double> measured, ReadOnlySpan<double> noise, StartPoint start, double giveUpAbove)
+    {
+        Load(model, start);
+        return Run(model, measured, noise, giveUpAbove);
+    }
+
+    /// <summary>Linearises a model at its prior mean, with one parameter moved where wanted; null when it has no operating state there.</summary>
+    /// <param name="moved">position in φ; −1 for none</param>
+    /// <param name="to">where it is moved</param>
+    public StartPoint? Linearise(BoardModel model, int moved = -1, double to = 0)
     {
         Prepare(model);
-        if (movedParameter >= 0) phi[movedParameter] = movedTo;
-        return Run(model, measured, noise, giveUpAbove);
+        if (moved >= 0) phi[moved] = to;
+        var start = new StartPoint(Phi.ToArray(), new double[m], new double[m * p], moved);
+        try
+        {
+            model.Forget();
+            model.Predict(start.Phi, start.Predicted, start.Jacobian);
+            return start;
+        }
+        catch (NoOperatingStateException)
+        {
+            return null;
+        }
     }
 
     /// <summary>Minimises from where an earlier fit ended, until nothing moves: the evidence is then good to 1e-6.</summary>
@@ -116,30 +142,24 @@ public sealed class EvidenceFit
         }
     }
 
-    /// <summary>χ² of the readings under the model linearised at its prior mean with one parameter moved: a forecast of where a fit from there would end.</summary>
-    public double Forecast(BoardModel model, ReadOnlySpan<double> measured, ReadOnlySpan<double> noise, int movedParameter, double movedTo)
+    /// <summary>χ² of the readings under the linearised model, the moved parameter held: a forecast of where a fit from there would end.</summary>
+    public double Forecast(BoardModel model, ReadOnlySpan<double> measured, ReadOnlySpan<double> noise, StartPoint start)
     {
+        Load(model, start);
+        if (start.Moved < 0) return TryInnovate(measured, noise) ? ForecastChiSquared(measured) : double.PositiveInfinity;
+        for (var i = 0; i < m; i++) jacobian[i * p + start.Moved] = 0;
+        var off = phi[start.Moved] - mean[start.Moved];
+        return TryInnovate(measured, noise) ? ForecastChiSquared(measured) + off * off / variance[start.Moved] : double.PositiveInfinity;
+    }
+
+    private void Load(BoardModel model, StartPoint start)
+    {
+        ArgumentNullException.ThrowIfNull(start);
         Prepare(model);
-        if (movedParameter >= 0) phi[movedParameter] = movedTo;
-        var j = jacobian.AsSpan(0, m * p);
-        try
-        {
-            model.Predict(Phi, predicted.AsSpan(0, m), j);
-        }
-        catch (NoOperatingStateException)
-        {
-            return double.PositiveInfinity;
-        }
-
-        // The moved parameter is held where it is, so that the forecast says what this value alone would explain.
-        if (movedParameter >= 0)
-        {
-            for (var i = 0; i < m; i++) j[i * p + movedParameter] = 0;
-        }
-
-        if (!TryInnovate(measured, noise)) return double.PositiveInfinity;
-        var offset = movedParameter >= 0 ? (movedTo - mean[movedParameter]) * (movedTo - mean[movedParameter]) / variance[movedParameter] : 0;
-        return ForecastChiSquared(measured) + offset;
+        start.Phi.CopyTo(phi, 0);
+        start.Predicted.CopyTo(predicted, 0);
+        start.Jacobian.CopyTo(jacobian, 0);
+        isLinearised = true;
     }
 
     /// <summary>Covariance C = Σ − Σ Jᵀ S⁻¹ J Σ of the first parameters after the last fit.</summary>
@@ -167,7 +187,7 @@ public sealed class EvidenceFit
 
     private Evidence Minimise(BoardModel model, ReadOnlySpan<double> measured, ReadOnlySpan<double> noise, double giveUpAbove)
     {
-        model.Predict(Phi, predicted.AsSpan(0, m), jacobian.AsSpan(0, m * p));
+        if (!isLinearised) model.Predict(Phi, predicted.AsSpan(0, m), jacobian.AsSpan(0, m * p));
         var chiSquared = ChiSquared(measured, noise, predicted, phi);
         if (!double.IsFinite(chiSquared)) return Evidence.None;
         for (var iteration = 0; iteration < Iterations; iteration++)
@@ -176,7 +196,8 @@ public sealed class EvidenceFit
             var forecast = ForecastChiSquared(measured);
             var expected = chiSquared - forecast;
             if (expected < still * (1 + chiSquared)) return Score(chiSquared, true);
-            if (forecast > giveUpAbove && iteration >= LeastSteps) return Score(chiSquared, false);
+            if (forecast > giveUpAbove && iteration >= (forecast > FarOff * giveUpAbove ? 1 : LeastSteps)) return Score(chiSquared, false);
+            var isHopeful = forecast <= giveUpAbove;
 
             for (var i = 0; i < p; i++)
             {
@@ -185,15 +206,15 @@ public sealed class EvidenceFit
                 step[i] = mean[i] + variance[i] * sum - phi[i];
             }
 
-            if (!TryDescend(model, measured, noise, expected, ref chiSquared)) return Score(chiSquared, expected < 1e-4 * (1 + chiSquared));
+            if (!TryDescend(model, measured, noise, expected, isHopeful ? SmallestStep : SmallestHopelessStep, ref chiSquared)) return Score(chiSquared, expected < 1e-4 * (1 + chiSquared));
         }
 
         return TryInnovate(measured, noise) ? Score(chiSquared, false) : Evidence.None;
     }
 
-    private bool TryDescend(BoardModel model, ReadOnlySpan<double> measured, ReadOnlySpan<double> noise, double expected, ref double chiSquared)
+    private bool TryDescend(BoardModel model, ReadOnlySpan<double> measured, ReadOnlySpan<double> noise, double expected, double smallest, ref double chiSquared)
     {
-        for (var length = 1.0; length > 1e-4; length /= 3)
+        for (var length = 1.0; length >= smallest; length /= 3)
         {
             for (var i = 0; i < p; i++) trialPhi[i] = phi[i] + length * step[i];
             double trial;
@@ -274,6 +295,7 @@ public sealed class EvidenceFit
     private void Prepare(BoardModel model)
     {
         ArgumentNullException.ThrowIfNull(model);
+        isLinearised = false;
         (m, p) = (model.ReadingCount, model.Parameters.Length);
         if (predicted.Length < m || phi.Length < p || jacobian.Length < m * p) Grow();
         for (var k = 0; k < p; k++)
