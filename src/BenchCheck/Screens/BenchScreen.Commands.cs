@@ -32,6 +32,8 @@ internal sealed partial class BenchScreen
         new(Key.B.WithCtrl, "Ctrl+B", "Board", "_Next of the file", "the next board of a readings file with several", () => Look(s => s.NextBoard())),
         new(Key.S.WithCtrl, "Ctrl+S", "Board", "_Save readings", "put the entries into the readings file", () => Save(null)),
         new(Key.W.WithCtrl, "Ctrl+W", "Board", "Save _as", "save the readings under another name and go on there", SaveAs),
+        new(Key.L.WithCtrl, "Ctrl+L", "Board", "_Import readings", "readings from another file, seen before they are taken", Import),
+        new(Key.E.WithCtrl, "Ctrl+E", "Board", "_Export check", "the check as CSV or JSON", Export),
         new(Key.P.WithCtrl, "Ctrl+P", "Board", "_Open another", "another board", () => Leave(ShowStart)),
         new(Key.Q.WithCtrl, "Ctrl+Q", "Board", "_Quit", "quit; entries not saved are offered again at the next start", () => Leave(() => App?.RequestStop())),
     ];

@@ -30,14 +30,14 @@ internal sealed class FormPanel : Panel
         ];
         foreach (var entry in entries)
         {
-            entry.MoveEnd();
             Add(entry);
         }
     }
 
     public override string Keys => "Enter take it   Tab or Down next field   Esc back";
 
-    public void Begin() => entries[0].SetFocus();
+    /// <summary>Puts the cursor behind what stands in the first field.</summary>
+    public void Begin() => Go(0);
 
     public override void Show()
     {
@@ -71,6 +71,13 @@ internal sealed class FormPanel : Panel
     private void Move(int by)
     {
         var at = Math.Max(0, entries.IndexOf(entries.FirstOrDefault(e => e.HasFocus)!));
-        entries[(at + by + entries.Length) % entries.Length].SetFocus();
+        Go((at + by + entries.Length) % entries.Length);
+    }
+
+    private void Go(int field)
+    {
+        entries[field].SetFocus();
+        entries[field].ClearAllSelection();
+        entries[field].InsertionPoint = entries[field].Text.Length;
     }
 }

@@ -220,4 +220,38 @@ public sealed class BenchScreenTests : IDisposable
         Assert.DoesNotContain('\u202e', drawn);
         Assert.Contains("Mist·]0;owned··", drawn);
     }
+
+    [Fact]
+    public void An_import_shows_what_it_would_take_and_why_rows_are_bad_before_anything_is_taken()
+    {
+        File.WriteAllText(folder.In("other.csv"), "at,value\nVCC,12.5 V\nNOWHERE,3 V\n");
+        using var screen = new ScreenUnderTest(folder.Path, width: 120, height: 40);
+        screen.AwaitCheck();
+        screen.Press(Key.L.WithCtrl).Type("other.csv").Press(Key.Enter);
+        var drawn = screen.Text;
+        Assert.Contains("1 readings understood, 1 rows or columns not", drawn);
+        Assert.Contains("NOWHERE", drawn);
+        Assert.Contains("in place of 12.16 V", drawn);
+        Assert.False(screen.Screen.Workbench!.Session.IsDirty);
+        screen.Type("2");
+        Assert.Contains("12.50 V", screen.AwaitCheck());
+        screen.Press(Key.Z.WithCtrl);
+        Assert.Contains("12.16 V", screen.AwaitCheck());
+    }
+
+    [Fact]
+    public void The_check_is_exported_for_programs_and_never_over_a_file()
+    {
+        using var screen = new ScreenUnderTest(folder.Path, width: 200);
+        screen.AwaitCheck();
+        screen.Press(Key.E.WithCtrl);
+        for (var i = 0; i < 4; i++) screen.Press(Key.Backspace);
+        screen.Type(".json").Press(Key.Enter);
+        Assert.True(screen.Text.Contains($"Written to {folder.In("mist-valve-check.json")}"), screen.Text);
+        Assert.Contains("\"verdict\": \"disagrees\"", File.ReadAllText(folder.In("mist-valve-check.json")));
+        screen.Press(Key.E.WithCtrl);
+        for (var i = 0; i < 4; i++) screen.Press(Key.Backspace);
+        screen.Type(".json").Press(Key.Enter);
+        Assert.Contains("there is a file of that name already", screen.Text);
+    }
 }

@@ -54,6 +54,9 @@ internal sealed class ScreenUnderTest : IDisposable
         return this;
     }
 
+    /// <summary>A key without drawing afterwards.</summary>
+    public void Strike(Key key) => app.InjectKey(key);
+
     public ScreenUnderTest Type(string text) => Press([.. text.Select(c => new Key(c))]);
 
     /// <summary>Waits until the drawn text holds <paramref name="text"/>.</summary>
