@@ -16,6 +16,7 @@ internal sealed partial class BenchScreen
         foreach (var path in BoardsHere()) choices.Add(new Choice(Path.GetFileName(path), "in this folder", () => Open(path, null, false)));
         foreach (var sample in UserFolder.Samples()) choices.Add(new Choice(sample, "sample board with readings, to try out", () => OpenSample(sample)));
         choices.Add(new Choice("Open a file", "a board file (TOML)", AskForFile));
+        choices.Add(new Choice("New board", "a board file to fill in, with an example of each line", MakeBoard));
         choices.Add(new Choice("Cautions", "for work on live boards", ShowCautions));
         choices.Add(new Choice("Quit", "", () => App?.RequestStop()));
         Put(new ChoicePanel(palette, "Which board is on the bench?", _ => [], choices.ToImmutable(), bench is null ? null : Close));
@@ -40,6 +41,17 @@ internal sealed partial class BenchScreen
         {
             if (string.IsNullOrWhiteSpace(values[0])) return "the name of a board file is needed";
             Open(values[0].Trim(), string.IsNullOrWhiteSpace(values[1]) ? null : values[1].Trim(), false);
+            return null;
+        }, ShowStart));
+
+    private void MakeBoard() => Put(new FormPanel(palette, "A new board",
+        [new("board file", "", "a name that is not in use; .toml is added"), new("title", "", "what the board is called")],
+        values =>
+        {
+            var path = values[0].Trim();
+            if (BoardTemplate.Write(ref path, values[1].Trim()) is { } refused) return refused;
+            Open(path, null, false);
+            Say($"Put your parts into {path} in place of the examples, then open it again (Ctrl+P).", Tone.Doubt);
             return null;
         }, ShowStart));
 

@@ -254,4 +254,14 @@ public sealed class BenchScreenTests : IDisposable
         screen.Type(".json").Press(Key.Enter);
         Assert.Contains("there is a file of that name already", screen.Text);
     }
+
+    [Fact]
+    public void A_new_board_is_written_and_opens_checked()
+    {
+        using var screen = new ScreenUnderTest(folder.Path, board: null, height: 60);
+        while (!screen.Text.Contains("> ", StringComparison.Ordinal) || !screen.Text.Split('\n').Any(l => l.StartsWith('>') && l.Contains("New board"))) screen.Press(Key.CursorDown);
+        screen.Press(Key.Enter).Type(folder.In("heater")).Press(Key.Tab).Type("Heater \"two\"").Press(Key.Enter);
+        Assert.Contains("Heater \"two\"", screen.AwaitCheck());
+        Assert.True(File.Exists(folder.In("heater.toml")));
+    }
 }
