@@ -3,7 +3,7 @@ using BenchCheck.Core.Checking;
 namespace BenchCheck.Files;
 
 /// <summary>The words of the result files for verdicts; fixed within a major version.</summary>
-internal static class ResultWords
+public static class ResultWords
 {
     public static string Of(ReadingVerdict verdict) => verdict switch
     {

@@ -1,4 +1,5 @@
 using System.CommandLine;
+using BenchCheck.Commands.Log;
 using BenchCheck.Core.Checking;
 using BenchCheck.Core.Diagnosis;
 using BenchCheck.Files;
@@ -16,9 +17,11 @@ internal static class CheckCommand
             Examples:
               benchcheck check fan-stage.toml fan-stage.csv
               benchcheck check fan-stage.toml shelf.csv --serial 0042 --json
+              benchcheck check fan-stage.toml fan-stage.csv --log
             """);
         var inputs = Inputs.BoardAndReadings(command, terminal);
         var options = new CheckOptions(command);
+        var filing = LogChoice.ToFileIn(command);
         var json = new Option<bool>("--json") { Description = "Print one JSON object a board, SI units, instead of tables." };
         var all = new Option<bool>("--all") { Description = "Show every estimate, not only those that the readings moved." };
         command.Add(json);
@@ -30,7 +33,11 @@ internal static class CheckCommand
         {
             if (inputs.Bench(parsed) is not { } bench) return ExitCode.Unusable;
             if (options.Rates(parsed, bench, terminal) is not { } rates || inputs.Readings(parsed, bench) is not { } sets) return ExitCode.Unusable;
-            var reconciliation = new Reconciliation(bench, options.Settings(parsed), rates);
+            var settings = options.Settings(parsed);
+            var reconciliation = new Reconciliation(bench, settings, rates);
+            using var record = filing.IsAsked(parsed)
+                ? new CheckFiling(filing.Place(parsed), settings, inputs.SkipsBadRows(parsed), inputs.BoardPath(parsed), inputs.ReadingsPath(parsed), options.RatesPath(parsed))
+                : null;
             var exit = ExitCode.Agrees;
             foreach (var set in sets)
             {
@@ -38,6 +45,7 @@ internal static class CheckCommand
                 if (result.Verdict != BoardVerdict.Agrees) exit = ExitCode.Disagrees;
                 if (parsed.GetValue(json)) terminal.Output.WriteLine(ResultJson.Line(result));
                 else new CheckTables(terminal.Console, result, parsed.GetValue(all)).Write();
+                if (record?.Add(result) is { } entry) terminal.Error.WriteLine($"filed as record {entry.Number}");
             }
 
             return exit;

@@ -63,6 +63,9 @@ internal sealed class CheckOptions
         Seed = parsed.GetValue(seed),
     };
 
+    /// <summary>The file of fault rates; null when the usual rates are meant.</summary>
+    public string? RatesPath(ParseResult parsed) => parsed.GetValue(rates);
+
     /// <summary>The fault rates to use; null when the file named cannot be used, which is then said.</summary>
     public FaultRates? Rates(ParseResult parsed, Bench bench, Terminal terminal)
     {

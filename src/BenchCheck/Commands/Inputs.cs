@@ -31,6 +31,12 @@ internal sealed class Inputs
         return inputs;
     }
 
+    public string BoardPath(ParseResult parsed) => parsed.GetRequiredValue(board);
+
+    public string ReadingsPath(ParseResult parsed) => parsed.GetRequiredValue(readings);
+
+    public bool SkipsBadRows(ParseResult parsed) => parsed.GetValue(skipBadRows);
+
     public Bench? Bench(ParseResult parsed)
     {
         var result = BoardFile.Read(parsed.GetRequiredValue(board));
