@@ -21,6 +21,15 @@ public static class ResultWords
         _ => throw new ArgumentOutOfRangeException(nameof(verdict)),
     };
 
+    /// <summary>The verdict of a word; null when it is none.</summary>
+    public static BoardVerdict? BoardVerdictOf(string? word) => word switch
+    {
+        "agrees" => BoardVerdict.Agrees,
+        "undecided" => BoardVerdict.Undecided,
+        "disagrees" => BoardVerdict.Disagrees,
+        _ => null,
+    };
+
     public static string Of(Determination determined) => determined switch
     {
         Determination.Yes => "yes",

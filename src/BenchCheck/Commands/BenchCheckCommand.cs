@@ -1,4 +1,5 @@
 using System.CommandLine;
+using BenchCheck.Commands.Batch;
 using BenchCheck.Commands.Log;
 using BenchCheck.Core.Equations;
 using BenchCheck.Screens;
@@ -13,7 +14,7 @@ internal static class BenchCheckCommand
         var root = new RootCommand("Reconciles measured node voltages of a small analog board with what its parts list predicts.")
         {
             CheckCommand.Create(terminal), PredictCommand.Create(terminal), NextCommand.Create(terminal), LogCommand.Create(terminal),
-            OpenCommand.Create(terminal),
+            OpenCommand.Create(terminal), BatchCommand.Create(terminal),
         };
         root.SetAction(_ => ScreenProgram.Run(null, null, terminal.Error));
         var parsed = root.Parse(args);
