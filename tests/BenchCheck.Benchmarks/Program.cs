@@ -1,4 +1,5 @@
 using System.CommandLine;
+using BenchCheck.Benchmarks.Batches;
 using BenchCheck.Benchmarks.Scoreboard;
 using BenchCheck.Benchmarks.Scoreboard.Commands;
 using BenchCheck.Benchmarks.Speed;
@@ -10,5 +11,7 @@ var root = new RootCommand("Measures of the program against known truth, and of 
     IsolateCommand.Create(),
     FitBenchmark.Command,
     RankingBenchmark.Command,
+    BatchSpeed.Create(),
+    LogSpeed.Create(),
 };
 return root.Parse(args).Invoke();

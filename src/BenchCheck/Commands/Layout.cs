@@ -26,7 +26,7 @@ internal static class Layout
     public static void Heading(IAnsiConsole console, string text)
     {
         console.WriteLine();
-        console.Write(new Text(text, new Style(decoration: Decoration.Bold)));
+        console.Write(new Text(Printable.Text(text), new Style(decoration: Decoration.Bold)));
         console.WriteLine();
     }
 
