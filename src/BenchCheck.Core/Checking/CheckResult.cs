@@ -71,6 +71,9 @@ public sealed record ReadingResult(
     Reading Reading, double StandardUncertainty, double Predicted, double BandLow, double BandHigh, double Difference, double En,
     ReadingVerdict Verdict, double Fitted, double NormalisedResidual)
 {
+    /// <summary>Expanded uncertainty of the difference, meter and tolerances together, in the unit of the reading: what En is measured in.</summary>
+    public double ExpandedUncertainty { get; init; } = Difference / En;
+
     /// <summary>Parts that move the prediction most, with the share of the band's variance each holds, largest first.</summary>
     public ImmutableArray<Influence> Influences { get; init; } = [];
 }

@@ -61,12 +61,14 @@ internal static class Checker
             var tolerance = Math.Sqrt(PredictedBand.Variance(fit.Model, fit.PriorJacobian.AsSpan(i * p, p)));
             var uncertainty = plan.StandardUncertainty(i);
             var difference = plan.Measured[i] - fit.Predicted[i];
-            var en = difference / (k * Math.Sqrt(tolerance * tolerance + uncertainty * uncertainty));
+            var expanded = k * Math.Sqrt(tolerance * tolerance + uncertainty * uncertainty);
+            var en = difference / expanded;
             var size = Math.Abs(en);
             results.Add(new ReadingResult(
                 readings.Readings[i], uncertainty, fit.Predicted[i], bands[i].Low, bands[i].High, difference, en,
                 size <= 1 ? ReadingVerdict.In : size <= limit ? ReadingVerdict.Doubtful : ReadingVerdict.Out, fit.Fitted[i], fit.NormalisedResiduals[i])
             {
+                ExpandedUncertainty = expanded,
                 Influences = Checking.Influences.Of(fit.Model, fit.PriorJacobian.AsSpan(i * p, p)),
             });
         }

@@ -1,0 +1,24 @@
+using ScottPlot;
+
+namespace BenchCheck.Plots.Figures;
+
+/// <summary>The colours of every picture: dark enough on white to be told apart in grey; shape carries the meaning, colour repeats it.</summary>
+internal static class Ink
+{
+    public static readonly Color Paper = new("#FFFFFF");
+    public static readonly Color Text = new("#1B2430");
+    public static readonly Color Quiet = new("#566171");
+    public static readonly Color Grid = new("#DCE1E8");
+    public static readonly Color Frame = new("#9AA5B4");
+
+    /// <summary>Where a value is expected to lie.</summary>
+    public static readonly Color Expected = new("#E9EFF6");
+
+    /// <summary>A range: the predicted band, a coverage interval, the box of a batch.</summary>
+    public static readonly Color Band = new("#9DB6D3");
+
+    public static readonly Color Limit = new("#3D5A80");
+    public static readonly Color In = new("#1F6B4F");
+    public static readonly Color Doubtful = new("#8A5A00");
+    public static readonly Color Out = new("#B3261E");
+}
