@@ -19,6 +19,7 @@ internal static class ReadingRows
         Place[] nodes = condition.IsSmallSignal ? [] : [.. board.Nodes.Where(n => n != board.Reference).Select(n => new Place(condition.Name, quantity, n, board.Reference))];
         IEnumerable<ReadingRow> rows = nodes.SelectMany(n => read.Any(r => r.Place == n) ? read.Where(r => r.Place == n) : [new ReadingRow(n, null, null, Expected(session, n))]);
         rows = rows.Concat(read.Where(r => !nodes.Contains(r.Place)));
+        if (session.Suggested is { } next && next.Condition == condition.Name && !rows.Any(r => r.Place == next)) rows = rows.Append(new ReadingRow(next, null, null, null));
         rows = session.Order switch
         {
             RowOrder.Worst => rows.OrderByDescending(r => r.Result is { } result ? Math.Abs(result.En) : r.Reading is null ? -1 : 0),

@@ -264,4 +264,16 @@ public sealed class BenchScreenTests : IDisposable
         Assert.Contains("Heater \"two\"", screen.AwaitCheck());
         Assert.True(File.Exists(folder.In("heater.toml")));
     }
+
+    [Fact]
+    public void A_suggested_reading_between_two_nodes_has_a_row_to_type_into()
+    {
+        using var screen = new ScreenUnderTest(folder.Path);
+        screen.AwaitCheck();
+        var next = screen.Screen.Workbench!.Session.Suggested!;
+        screen.Press(Key.G.WithCtrl);
+        Assert.Contains($"{next.Name(screen.Screen.Workbench.Session.Bench.Board)}, {next.Condition}:", screen.Text);
+        screen.Type("1k77").Press(Key.Enter);
+        Assert.Equal(1770, screen.Screen.Workbench.Session.Readings.Readings[^1].Value);
+    }
 }
