@@ -10,6 +10,7 @@ internal static class ScreenProgram
 {
     private const int SmallestWidth = 60;
     private const int SmallestHeight = 16;
+    private static readonly TimeSpan LongestGoodbye = TimeSpan.FromSeconds(2);
 
     /// <summary>Why the screen cannot be shown here; null when it can.</summary>
     public static string? Obstacle()
@@ -41,6 +42,9 @@ internal static class ScreenProgram
             context.Cancel = true;
             stopped = 128 + (context.Signal switch { PosixSignal.SIGHUP => 1, PosixSignal.SIGINT => 2, _ => 15 });
             app.Invoke(() => app.RequestStop());
+
+            // With its terminal gone the library may never come to the request; every entry is on disk, so ending at once loses nothing.
+            _ = Task.Delay(LongestGoodbye).ContinueWith(_ => Environment.Exit(stopped), TaskScheduler.Default);
         }
 
         using var terminate = PosixSignalRegistration.Create(PosixSignal.SIGTERM, Stop);

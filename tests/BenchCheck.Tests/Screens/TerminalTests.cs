@@ -51,6 +51,16 @@ public sealed partial class TerminalTests : IDisposable
         Assert.Equal(11.5, left.Left!.Sets[0].Readings[0].Value);
     }
 
+    [Fact]
+    public void Closing_the_terminal_ends_the_program()
+    {
+        using var terminal = new TerminalSession(folder, "exec $BENCHCHECK open fan-stage.toml");
+        terminal.Await("I have read this");
+        using var process = Process.GetProcessById(terminal.ProcessId);
+        terminal.Dispose();
+        Assert.True(process.WaitForExit(TimeSpan.FromSeconds(20)), "the program runs on without a terminal");
+    }
+
     [Theory]
     [InlineData("TERM=dumb $BENCHCHECK open fan-stage.toml", "cannot be drawn on a terminal of kind")]
     [InlineData("echo | $BENCHCHECK open fan-stage.toml", "needs a terminal for input and output")]
