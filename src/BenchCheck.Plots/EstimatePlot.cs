@@ -70,19 +70,12 @@ public static class EstimatePlot
     /// Position on the axis: nominal 0, the ends of the tolerance −1 and 1, numbers on a ratio scale by their logarithms; NaN where the parts
     /// list sets no tolerance.
     /// </summary>
-    private static double Scaled(Estimate e, double value) => e.Kind.IsRatioScale
-        ? Position(Math.Log(value), Math.Log(e.NominalLow), Math.Log(e.Nominal), Math.Log(e.NominalHigh))
-        : Position(value, e.NominalLow, e.Nominal, e.NominalHigh);
-
-    private static double Position(double value, double low, double nominal, double high)
-    {
-        var room = value < nominal ? nominal - low : high - nominal;
-        return room > 0 ? (value - nominal) / room : double.NaN;
-    }
+    private static double Scaled(Estimate e, double value) =>
+        e.Kind.IsRatioScale ? Limits.Of(e).Logarithms.Position(Math.Log(value)) : Limits.Of(e).Position(value);
 
     private static RowColumn[] Columns(ImmutableArray<Estimate> rows) =>
     [
-        new("parts list", [.. rows.Select(Words.Listed)]),
+        new("parts list", [.. rows.Select(e => Limits.Of(e).Text(e.Kind.Unit))]),
         new("estimate", [.. rows.Select(e => EngineeringNotation.FormatWithUncertainty(e.Value, e.StandardUncertainty, e.Kind.Unit))]),
         new("determined", [.. rows.Select(e => Words.Of(e.Determined))]),
     ];

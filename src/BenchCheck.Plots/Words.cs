@@ -50,12 +50,6 @@ internal static class Words
         _ => value.ToString(Math.Abs(value) switch { < 9.995 => "+0.00;-0.00;0.00", < 99999.5 => "+0;-0;0", _ => "+0.0E0;-0.0E0" }, CultureInfo.InvariantCulture),
     };
 
-    /// <summary>What the parts list says of a parameter; "?" for an unknown.</summary>
-    public static string Listed(Estimate estimate) =>
-        double.IsNaN(estimate.Nominal) ? "?"
-        : estimate.NominalLow == estimate.NominalHigh ? EngineeringNotation.Format(estimate.Nominal, estimate.Kind.Unit)
-        : EngineeringNotation.Range(estimate.NominalLow, estimate.NominalHigh, estimate.Kind.Unit);
-
     /// <summary>"R3 resistance", "handheld, voltage, 6 V range: scale error", with the condition where the parameter belongs to one only.</summary>
     public static string Name(Estimate estimate) =>
         $"{estimate.Part}{(estimate.Kind == ParameterKind.ScaleError ? ":" : "")} {estimate.Kind.Name}" + (estimate.Condition is null ? "" : $" ({estimate.Condition})");

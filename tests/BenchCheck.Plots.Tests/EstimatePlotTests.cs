@@ -8,7 +8,7 @@ public sealed class EstimatePlotTests
     public void Names_limits_and_estimates_stand_in_the_picture_as_text()
     {
         var texts = EstimatePlot.Of(Checks.Healthy).Texts();
-        foreach (var expected in new[] { "R1 resistance", "48.20 ± 0.60 kΩ", "44.6..49.4 kΩ", "Q1 gain", "190 ± 60", "100..300", "R9 resistance", "?", "partly" })
+        foreach (var expected in new[] { "R1 resistance", "48.20 ± 0.60 kΩ", "44.65..49.35 kΩ", "Q1 gain", "190 ± 60", "100..300", "R9 resistance", "?", "partly" })
             Assert.Contains(expected, texts);
     }
 

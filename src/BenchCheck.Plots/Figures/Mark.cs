@@ -25,14 +25,23 @@ internal sealed class Mark : IMarker
     /// <summary>An estimate that stands where the parts list put it.</summary>
     public static readonly Mark Undetermined = new(Ink.Limit, Ring);
 
-    /// <summary>A value among many.</summary>
-    public static readonly Mark Point = new(Ink.Limit, Disc);
+    /// <summary>The median of many values: an upright bar.</summary>
+    public static readonly Mark Middle = new(Ink.Text, Upright);
+
+    /// <summary>A value far from the many: a small ring.</summary>
+    public static readonly Mark Outlier = new(Ink.Out, (canvas, paint, centre, half) => Ring(canvas, paint, centre, half * 0.7f));
 
     /// <summary>Says that a value lies beyond the left edge.</summary>
     public static readonly Mark BeyondLeft = new(Ink.Text, (canvas, paint, centre, half) => Triangle(canvas, paint, centre, -half));
 
     /// <summary>Says that a value lies beyond the right edge.</summary>
     public static readonly Mark BeyondRight = new(Ink.Text, Triangle);
+
+    /// <summary>Says that a value lies above the top edge.</summary>
+    public static readonly Mark BeyondTop = new(Ink.Out, Wedge);
+
+    /// <summary>Says that a value lies below the bottom edge.</summary>
+    public static readonly Mark BeyondBottom = new(Ink.Out, (canvas, paint, centre, half) => Wedge(canvas, paint, centre, -half));
 
     private readonly Action<SKCanvas, SKPaint, SKPoint, float> draw;
 
@@ -118,6 +127,14 @@ internal sealed class Mark : IMarker
         using var triangle = Polygon((centre.X - half, centre.Y - Math.Abs(half)), (centre.X + half, centre.Y), (centre.X - half, centre.Y + Math.Abs(half)));
         canvas.DrawPath(triangle, paint);
     }
+
+    private static void Wedge(SKCanvas canvas, SKPaint paint, SKPoint centre, float half)
+    {
+        using var wedge = Polygon((centre.X - Math.Abs(half), centre.Y + half), (centre.X, centre.Y - half), (centre.X + Math.Abs(half), centre.Y + half));
+        canvas.DrawPath(wedge, paint);
+    }
+
+    private static void Upright(SKCanvas canvas, SKPaint paint, SKPoint centre, float half) => canvas.DrawRect(centre.X - 1.5f, centre.Y - half, 3, 2 * half, paint);
 
     /// <summary>Draws in the colour of the paper, then takes the mark's own up again.</summary>
     private static void Paper(SKCanvas canvas, SKPaint paint, Action action)

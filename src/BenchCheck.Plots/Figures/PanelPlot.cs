@@ -1,5 +1,6 @@
 using BenchCheck.Plots.Typefaces;
 using ScottPlot;
+using ScottPlot.Plottables;
 
 namespace BenchCheck.Plots.Figures;
 
@@ -7,6 +8,10 @@ namespace BenchCheck.Plots.Figures;
 internal static class PanelPlot
 {
     public const float LetterSize = 12;
+
+    /// <summary>Room for half a number where an axis ends.</summary>
+    private const float SideRoom = 28;
+    private const float TopRoom = 9;
 
     static PanelPlot()
     {
@@ -21,8 +26,14 @@ internal static class PanelPlot
         plot.FigureBackground.Color = Ink.Paper;
         plot.DataBackground.Color = Colors.Transparent;
         plot.HideGrid();
-        plot.Axes.Right.IsVisible = false;
-        plot.Axes.Top.IsVisible = false;
+        foreach (var (edge, room) in new[] { ((IAxis)plot.Axes.Right, SideRoom), (plot.Axes.Top, TopRoom) })
+        {
+            edge.FrameLineStyle.IsVisible = false;
+            edge.TickGenerator = new ScottPlot.TickGenerators.EmptyTickGenerator();
+            edge.MinimumSize = room;
+            edge.MaximumSize = room;
+        }
+
         foreach (var axis in new IAxis[] { plot.Axes.Bottom, plot.Axes.Left })
         {
             axis.FrameLineStyle.Color = Ink.Frame;
@@ -33,6 +44,7 @@ internal static class PanelPlot
             axis.TickLabelStyle.ForeColor = Ink.Text;
         }
 
+        ((ScottPlot.AxisPanels.AxisBase)plot.Axes.Left).PaddingBetweenTickAndAxisLabels = new PixelPadding(8, 8, 0, 0);
         foreach (var label in new[] { plot.Axes.Bottom.Label, plot.Axes.Left.Label })
         {
             label.FontName = CarriedFaces.Family;
@@ -42,5 +54,19 @@ internal static class PanelPlot
         }
 
         return plot;
+    }
+
+    /// <summary>Makes of a span the shade in which values are expected.</summary>
+    public static void Expect(AxisSpan span)
+    {
+        span.FillStyle.Color = Ink.Expected;
+        span.LineStyle.IsVisible = false;
+    }
+
+    /// <summary>Key entries for limits drawn as a shade between solid lines, with a dashed line at the nominal value.</summary>
+    public static IEnumerable<KeyEntry> LimitKey(Limits limits)
+    {
+        if (limits.AreKnown) yield return new BarKey(Ink.Expected, 16, "range of the parts list");
+        if (double.IsFinite(limits.Nominal)) yield return new BarKey(Ink.Limit, 1.5f, "nominal (dashed)");
     }
 }

@@ -50,12 +50,7 @@ internal sealed class RowPanel
         new(plot, new PixelRect(left - Side, left + Width + Side, top + height + AxisRoom, top));
 
     /// <summary>Shades where values are expected, from one number of the axis to another.</summary>
-    public void Expect(double low, double high)
-    {
-        var span = plot.Add.HorizontalSpan(low, high);
-        span.FillStyle.Color = Ink.Expected;
-        span.LineStyle.IsVisible = false;
-    }
+    public void Expect(double low, double high) => PanelPlot.Expect(plot.Add.HorizontalSpan(low, high));
 
     public void Guide(double at, LinePattern pattern, Color color)
     {
