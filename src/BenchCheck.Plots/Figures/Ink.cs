@@ -1,3 +1,4 @@
+using System.Collections.Immutable;
 using ScottPlot;
 
 namespace BenchCheck.Plots.Figures;
@@ -21,4 +22,11 @@ internal static class Ink
     public static readonly Color In = new("#1F6B4F");
     public static readonly Color Doubtful = new("#8A5A00");
     public static readonly Color Out = new("#B3261E");
+
+    /// <summary>Each colour with what stands for it on a dark page.</summary>
+    public static readonly ImmutableArray<(Color OnPaper, Color OnDark)> OnDarkPages =
+    [
+        (Paper, new("#161B22")), (Text, new("#E6EAF0")), (Quiet, new("#A9B4C2")), (Grid, new("#2C343F")), (Frame, new("#6B7788")), (Expected, new("#222C39")),
+        (Band, new("#4A6C94")), (Limit, new("#A3C1E6")), (In, new("#6FCBA6")), (Doubtful, new("#F0B44C")), (Out, new("#FF8A80")),
+    ];
 }

@@ -11,7 +11,7 @@ internal static class FigureText
     public const int Bold = 700;
 
     private const char Ellipsis = '…';
-    private const char Mark = '·';
+    private const string Mark = "·";
 
     /// <summary>Characters of a name that are looked at before it is cut to the width there is.</summary>
     private const int LongestRead = 400;
@@ -34,16 +34,15 @@ internal static class FigureText
     }
 
     /// <summary>Text from a file made fit for a picture: characters that steer, hide or reorder text become "·", white space one space.</summary>
-    public static string Clean(string text)
+    /// <param name="longest">characters after which it is cut with "…"</param>
+    public static string Clean(string text, int longest = LongestRead)
     {
-        var result = new StringBuilder(Math.Min(text.Length, LongestRead));
+        var result = new StringBuilder(Math.Min(text.Length, longest));
         foreach (var rune in text.EnumerateRunes())
         {
-            if (result.Length >= LongestRead) return result.Append(Ellipsis).ToString();
-            var category = Rune.GetUnicodeCategory(rune);
-            if (rune.Value is '\t' or '\n' or '\r' || category == UnicodeCategory.SpaceSeparator) result.Append(' ');
-            else if (IsShown(category) && rune != Rune.ReplacementChar) result.Append(rune.ToString());
-            else result.Append(Mark);
+            if (result.Length >= longest) return result.Append(Ellipsis).ToString();
+            if (rune.Value is '\t' or '\n' or '\r' || Rune.GetUnicodeCategory(rune) == UnicodeCategory.SpaceSeparator) result.Append(' ');
+            else result.Append(Shown(rune));
         }
 
         return result.ToString().Trim();
@@ -92,6 +91,8 @@ internal static class FigureText
         return line;
     }
 
-    private static bool IsShown(UnicodeCategory category) => category is not (UnicodeCategory.Control or UnicodeCategory.Format or UnicodeCategory.LineSeparator
-        or UnicodeCategory.ParagraphSeparator or UnicodeCategory.PrivateUse or UnicodeCategory.OtherNotAssigned or UnicodeCategory.Surrogate);
+    /// <summary>The character itself, or "·" for one that steers, hides or reorders text.</summary>
+    public static string Shown(Rune rune) => rune == Rune.ReplacementChar || Rune.GetUnicodeCategory(rune) is UnicodeCategory.Control or UnicodeCategory.Format
+        or UnicodeCategory.LineSeparator or UnicodeCategory.ParagraphSeparator or UnicodeCategory.PrivateUse or UnicodeCategory.OtherNotAssigned or UnicodeCategory.Surrogate
+        ? Mark : rune.ToString();
 }
