@@ -11,11 +11,13 @@ namespace BenchCheck.Core.Equations;
 ///   v = D x,  v ≤ law(z), z ≥ 0   one row of D and one column of C a port
 /// </code>
 /// A row of a node sums the currents that leave it. The reference node is no unknown; its index is −1. Nodes that no linear element ties
-/// to the reference get a leakage of 1e-12 S there, one per island, so that A is regular whatever the ports do.
+/// to the reference get a leakage of 1e-11 S there, one per island, so that A is regular whatever the ports do; an island that no port reaches
+/// is tied firmly instead, since nothing flows through that tie.
 /// </remarks>
 public sealed class Network
 {
-    internal const double LeakageSiemens = 1e-12;
+    internal const double LeakageSiemens = 1e-11;
+    internal const double TieSiemens = 1e-3;
 
     internal readonly record struct CompiledConductor(int From, int To, Coefficient Ohms, int Part);
 
@@ -48,7 +50,7 @@ public sealed class Network
     internal CompiledCurrent[] Currents = [];
     internal CompiledAmplifier[] Amplifiers = [];
     internal CompiledPort[] Ports = [];
-    internal int[] Leaks = [];
+    internal (int Node, double Siemens)[] Leaks = [];
     internal double ThermalVolts;
     internal Dictionary<string, int> NodeIndex = [];
     internal ImmutableArray<Part> Parts = [];

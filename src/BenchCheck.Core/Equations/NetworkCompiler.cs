@@ -158,8 +158,8 @@ public sealed class NetworkCompiler
         _ => throw new ArgumentOutOfRangeException(nameof(control)),
     };
 
-    /// <summary>One node of each group that no linear element ties to the reference.</summary>
-    private int[] Islands(int nodeCount)
+    /// <summary>One node of each group that no linear element ties to the reference, with the conductance that does.</summary>
+    private (int Node, double Siemens)[] Islands(int nodeCount)
     {
         // Node −1, the reference, is kept at position 0.
         var root = new int[nodeCount + 1];
@@ -179,6 +179,12 @@ public sealed class NetworkCompiler
         foreach (var c in conductors) Join(c.From, c.To);
         foreach (var v in voltages) Join(v.Plus, v.Minus);
         foreach (var a in amplifiers) Join(a.Output, -1);
-        return [.. Enumerable.Range(1, nodeCount).Where(i => Find(i) == i).Select(i => i - 1)];
+        // An island that no device reaches may be tied as firmly as is good for the arithmetic: nothing flows through the tie.
+        var reached = ports.SelectMany(p => new[] { p.High, p.Low, p.TransportFrom, p.TransportTo }).Select(node => Find(node + 1)).ToHashSet();
+        return
+        [
+            .. Enumerable.Range(1, nodeCount).Where(i => Find(i) == i)
+                .Select(i => (i - 1, reached.Contains(i) ? Network.LeakageSiemens : Network.TieSiemens)),
+        ];
     }
 }

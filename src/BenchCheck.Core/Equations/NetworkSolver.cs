@@ -361,7 +361,7 @@ public sealed class NetworkSolver
         a.AsSpan(0, n * n).Clear();
         var b = open.AsSpan(0, n);
         b.Clear();
-        foreach (var node in network.Leaks) a[node * n + node] += Network.LeakageSiemens;
+        foreach (var (node, siemens) in network.Leaks) a[node * n + node] += siemens;
         for (var i = 0; i < network.Conductors.Length; i++)
         {
             ref readonly var e = ref network.Conductors[i];

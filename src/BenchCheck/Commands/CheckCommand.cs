@@ -17,10 +17,12 @@ internal static class CheckCommand
             Examples:
               benchcheck check fan-stage.toml fan-stage.csv
               benchcheck check fan-stage.toml shelf.csv --serial 0042 --json
+              benchcheck check fan-stage.toml fan-stage.csv --plot fan-stage.png --report fan-stage.html
               benchcheck check fan-stage.toml fan-stage.csv --log
             """);
         var inputs = Inputs.BoardAndReadings(command, terminal);
         var options = new CheckOptions(command);
+        var pictures = new CheckPictures(command, terminal);
         var filing = LogChoice.ToFileIn(command);
         var json = new Option<bool>("--json") { Description = "Print one JSON object a board, SI units, instead of tables." };
         var all = new Option<bool>("--all") { Description = "Show every estimate, not only those that the readings moved." };
@@ -39,12 +41,14 @@ internal static class CheckCommand
                 ? new CheckFiling(filing.Place(parsed), settings, inputs.SkipsBadRows(parsed), inputs.BoardPath(parsed), inputs.ReadingsPath(parsed), options.RatesPath(parsed))
                 : null;
             var exit = ExitCode.Agrees;
+            var number = 0;
             foreach (var set in sets)
             {
                 var result = reconciliation.Run(set, cancel);
                 if (result.Verdict != BoardVerdict.Agrees) exit = ExitCode.Disagrees;
                 if (parsed.GetValue(json)) terminal.Output.WriteLine(ResultJson.Line(result));
                 else new CheckTables(terminal.Console, result, parsed.GetValue(all)).Write();
+                if (!pictures.Write(parsed, result, settings, inputs, number++)) return ExitCode.Unusable;
                 if (record?.Add(result) is { } entry) terminal.Error.WriteLine($"filed as record {entry.Number}");
             }
 

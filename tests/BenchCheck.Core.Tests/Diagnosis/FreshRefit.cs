@@ -97,7 +97,7 @@ internal sealed class FreshRefit(IReadOnlyList<Probe> probes)
             Add(to, from, -siemens);
         }
 
-        foreach (var node in network.Leaks) Add(node, node, Network.LeakageSiemens);
+        foreach (var (node, siemens) in network.Leaks) Add(node, node, siemens);
         foreach (var e in network.Conductors) Conduct(e.From, e.To, 1 / e.Ohms.Value(theta));
         Conduct(high, low, 1 / probe.Meter.InputOhms);
         foreach (var e in network.Voltages)
