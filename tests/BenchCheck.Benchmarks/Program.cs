@@ -11,6 +11,7 @@ var root = new RootCommand("Measures of the program against known truth, and of 
     IsolateCommand.Create(),
     FitBenchmark.Command,
     RankingBenchmark.Command,
+    SolveBenchmark.Command,
     BatchSpeed.Create(),
     LogSpeed.Create(),
 };
