@@ -35,6 +35,8 @@ internal sealed class BoardSketch
     public BoardSketch Zener(string name, string anode, string cathode, double breakdown, double drop = 0.65) =>
         Add(new Diode(Core.Boards.Diode.Zener, name, [anode, cathode], Nominal.Exactly(drop), Nominal.Exactly(breakdown)));
 
+    public BoardSketch Capacitor(string name, string from, string to, double farads) => Add(new Capacitor(name, [from, to], Nominal.Exactly(farads)));
+
     public BoardSketch Add(Part part)
     {
         parts.Add(part);

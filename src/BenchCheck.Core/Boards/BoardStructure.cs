@@ -33,10 +33,13 @@ public static class BoardStructure
             yield return new StructureProblem(null, board.Reference, $"no part touches the reference node {board.Reference}", true);
     }
 
+    /// <summary>Nodes that a generator touches: its lead is a connection too.</summary>
+    private static IEnumerable<string> Driven(Board board) => board.Conditions.Select(c => c.Drive).OfType<Drive>().SelectMany(d => new[] { d.At, d.Against });
+
     private static IEnumerable<StructureProblem> SinglePins(Board board) =>
         board.Parts.SelectMany(p => p.Nodes.Select((node, pin) => (Part: p, Node: node, Pin: pin)))
             .GroupBy(x => x.Node, StringComparer.Ordinal)
-            .Where(g => g.Count() == 1 && g.Key != board.Reference)
+            .Where(g => g.Count() == 1 && g.Key != board.Reference && !Driven(board).Contains(g.Key))
             .Select(g => new StructureProblem(g.First().Part.Designator, g.Key,
                 $"node {g.Key} has a single pin, {g.First().Part.JointName(g.First().Pin)}: nothing else connects to it", false));
 
@@ -128,7 +131,7 @@ public static class BoardStructure
                 $"nothing connects {Names("node", nodes)} ({string.Join(", ", parts.Select(p => p.Designator))}) with the reference {reference}", true);
         }
 
-        foreach (var (nodes, parts) in Untied(board, direct, reference).Where(g => any.AreTied(g.Nodes[0], reference)))
+        foreach (var (nodes, parts) in Untied(board, direct, reference).Where(g => any.AreTied(g.Nodes[0], reference) && !g.Nodes.Intersect(Driven(board)).Any()))
         {
             yield return new StructureProblem(parts[0].Designator, nodes[0],
                 $"no direct current can reach {Names("node", nodes)}: only capacitors or inputs connect there, so the voltage at DC is open", false);

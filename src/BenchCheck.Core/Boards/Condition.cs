@@ -26,5 +26,8 @@ public sealed record Condition(
     /// <summary>Frequency of a small-signal condition in hertz; null when capacitors count as shorts.</summary>
     public double? Hertz { get; init; }
 
+    /// <summary>The generator of a small-signal condition; null when each reading says by its nodes where the signal goes in.</summary>
+    public Drive? Drive { get; init; }
+
     public bool IsSmallSignal => OperatingPoint is not null;
 }

@@ -71,5 +71,7 @@ public sealed record AmplifierBranch(int Plus, int Minus, int Output, Coefficien
 /// <param name="IsUpper">true: the output stays below pin − margin; false: above pin + margin</param>
 public sealed record Limit(int Output, int Pin, Coefficient Margin, bool IsUpper);
 
-/// <summary>A capacitance (open at DC) or an inductance (its winding is a conductor of its own).</summary>
-public sealed record Reactance(int From, int To, Coefficient Value, bool IsCapacitance);
+/// <summary>A capacitance, or an inductance with its winding in series: what small signals meet beside the parts known at DC.</summary>
+/// <param name="Value">farads or henries</param>
+/// <param name="Ohms">resistance in series</param>
+public sealed record Reactance(int From, int To, Coefficient Value, Coefficient Ohms, bool IsCapacitance);

@@ -21,6 +21,12 @@ public sealed record ParameterKind(string Name, Unit Unit, bool IsRatioScale, bo
     public static readonly ParameterKind Current = new("current", Unit.Ampere, false);
     public static readonly ParameterKind Position = new("position", Unit.One, false);
     public static readonly ParameterKind Transconductance = new("transconductance", Unit.Siemens, true);
+    public static readonly ParameterKind Capacitance = new("capacitance", Unit.Farad, true);
+    public static readonly ParameterKind Inductance = new("inductance", Unit.Henry, true);
+
+    /// <summary>Resistance between collector and emitter, or drain and source, that small changes meet.</summary>
+    public static readonly ParameterKind OutputResistance = new("output resistance", Unit.Ohm, true);
+
     public static readonly ParameterKind ScaleError = new("scale error", Unit.One, false);
 
     /// <summary>Gain of a transistor with collector and emitter exchanged; seen only through its saturation voltage.</summary>
@@ -37,6 +43,12 @@ public sealed record ParameterKind(string Name, Unit Unit, bool IsRatioScale, bo
 
     /// <summary>Offset voltage of an op-amp's input; what remains of a saturation voltage beyond its junctions.</summary>
     public static readonly ParameterKind Offset = new("offset", Unit.Volt, false, false);
+
+    /// <summary>True for a number that only readings at a stated frequency can tell.</summary>
+    public bool IsReactive => ReferenceEquals(this, Capacitance) || ReferenceEquals(this, Inductance);
+
+    /// <summary>True for a number that only small-signal readings can tell.</summary>
+    public bool IsSmallSignal => IsReactive || ReferenceEquals(this, OutputResistance);
 
     public override string ToString() => Name;
 }

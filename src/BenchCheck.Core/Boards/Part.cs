@@ -39,6 +39,12 @@ public abstract record Part
     /// <param name="setting">what the condition sets for this part (a switch position); null when it sets nothing</param>
     public abstract void Describe(PartElements elements, string? setting);
 
+    /// <summary>
+    /// Adds this part's elements for small changes around an operating point: the same, with what counts only there. Junctions must be the
+    /// same and in the same order as in <see cref="Describe"/>.
+    /// </summary>
+    public virtual void DescribeSmallSignal(PartElements elements, string? setting) => Describe(elements, setting);
+
     /// <summary>Joint of a pin as printed: "Q1.base", "R3.1".</summary>
     public string JointName(int pin) => $"{Designator}.{Kind.Pins[pin]}";
 }

@@ -41,6 +41,9 @@ public sealed record Transistor(PartKind Kind, string Designator, ImmutableArray
 
     public double ReferenceAmperes { get; init; } = 1e-3;
 
+    /// <summary>Resistance between collector and emitter at the operating point, as small signals meet it; null when it is left out.</summary>
+    public Nominal? OutputOhms { get; init; }
+
     public bool IsNpn => ReferenceEquals(Kind, Npn);
 
     public override ImmutableArray<PartParameter> Parameters =>
@@ -48,6 +51,7 @@ public sealed record Transistor(PartKind Kind, string Designator, ImmutableArray
         new(ParameterKind.Gain, Gain), new(ParameterKind.Drop, Drop), new(ParameterKind.ReverseGain, UsualReverseGain),
         new(ParameterKind.Offset, Saturation), new(ParameterKind.Ideality, UsualIdeality),
         new(ParameterKind.SeriesResistance, UsualSeriesOhms),
+        .. OutputOhms is null ? ImmutableArray<PartParameter>.Empty : [new(ParameterKind.OutputResistance, OutputOhms)],
     ];
 
     public override void Describe(PartElements elements, string? setting)
@@ -65,5 +69,11 @@ public sealed record Transistor(PartKind Kind, string Designator, ImmutableArray
             elements.Add(new Junction(Emitter, Base, drop, default, forward, Emitter, Collector, ReferenceAmperes, ideality, series, JunctionRole.BaseEmitter));
             elements.Add(new Junction(Collector, Base, drop, less, reverse, Collector, Emitter, ReferenceAmperes, ideality, series, JunctionRole.BaseCollector));
         }
+    }
+
+    public override void DescribeSmallSignal(PartElements elements, string? setting)
+    {
+        Describe(elements, setting);
+        if (OutputOhms is not null) elements.Add(new Conductor(Collector, Emitter, Coefficient.Of(6)));
     }
 }

@@ -45,11 +45,16 @@ public sealed class Network
         int High, int Low, Coefficient Drop, Coefficient Excess, Coefficient Gain, int TransportFrom, int TransportTo,
         double ReferenceAmperes, Coefficient Ideality, Coefficient SeriesOhms, JunctionRole? Role, int Row, double RowSign, int Part);
 
+    /// <summary>An impedance with its own branch current at Row; only in networks for small signals.</summary>
+    internal readonly record struct CompiledReactance(int From, int To, int Row, Coefficient Value, Coefficient Ohms, bool IsCapacitance, int Part);
+
     internal CompiledConductor[] Conductors = [];
     internal CompiledVoltage[] Voltages = [];
     internal CompiledCurrent[] Currents = [];
     internal CompiledAmplifier[] Amplifiers = [];
     internal CompiledPort[] Ports = [];
+    internal CompiledReactance[] Reactances = [];
+    internal Dictionary<(string Part, int Pin), int> JointRows = [];
     internal (int Node, double Siemens)[] Leaks = [];
     internal double ThermalVolts;
     internal Dictionary<string, int> NodeIndex = [];
@@ -70,8 +75,13 @@ public sealed class Network
 
     public int PortCount => Ports.Length;
 
-    /// <summary>Row of x that holds the current of the inserted ammeter, −1 without one.</summary>
-    public int AmmeterRow { get; internal set; } = -1;
+    /// <summary>Row of x that holds the current into a part's pin, where an ammeter was inserted.</summary>
+    /// <exception cref="KeyNotFoundException">no ammeter there</exception>
+    public int RowOf(Ammeter ammeter)
+    {
+        ArgumentNullException.ThrowIfNull(ammeter);
+        return JointRows[(ammeter.Part, ammeter.Pin)];
+    }
 
     /// <summary>Position of a node's voltage in x; −1 for the reference.</summary>
     /// <exception cref="KeyNotFoundException">no such node</exception>

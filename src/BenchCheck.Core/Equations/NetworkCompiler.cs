@@ -13,51 +13,64 @@ public sealed class NetworkCompiler
     private readonly Board board;
     private readonly ParameterTable table;
     private readonly Condition condition;
+    private readonly Action<Part, PartElements, string?> describe;
     private readonly Dictionary<string, int> nodeIndex = new(StringComparer.Ordinal);
     private readonly List<Network.CompiledConductor> conductors = [];
     private readonly List<Network.CompiledVoltage> voltages = [];
     private readonly List<Network.CompiledCurrent> currents = [];
     private readonly List<Network.CompiledAmplifier> amplifiers = [];
     private readonly List<Network.CompiledPort> ports = [];
-    private readonly Dictionary<string, int> senseRow = new(StringComparer.Ordinal);
+    private readonly List<Network.CompiledReactance> reactances = [];
+    private readonly Dictionary<(string Part, int Pin), int> jointRow = [];
     private readonly Dictionary<(string Part, int Pin), string> insertedNode = [];
     private int branchCount;
 
-    private NetworkCompiler(Board board, ParameterTable table, Condition condition)
+    private NetworkCompiler(Board board, ParameterTable table, Condition condition, Action<Part, PartElements, string?> describe)
     {
+        this.describe = describe;
         this.board = board;
         this.table = table;
         this.condition = condition;
     }
 
     /// <param name="table">the parameter vector that coefficients refer to; made from the same board</param>
-    /// <param name="ammeter">an ammeter to insert; its current is read at <see cref="Network.AmmeterRow"/>, counted into the part</param>
-    public static Network Compile(Board board, ParameterTable table, Condition condition, Ammeter? ammeter = null)
+    /// <param name="ammeters">ammeters to insert; their currents, counted into the part, are read at <see cref="Network.RowOf"/></param>
+    public static Network Compile(Board board, ParameterTable table, Condition condition, params ReadOnlySpan<Ammeter> ammeters)
     {
         ArgumentNullException.ThrowIfNull(board);
         ArgumentNullException.ThrowIfNull(condition);
-        return new NetworkCompiler(board, table, condition).Compile(ammeter);
+        return new NetworkCompiler(board, table, condition, (part, elements, setting) => part.Describe(elements, setting)).Compile(ammeters);
     }
 
-    private Network Compile(Ammeter? ammeter)
+    /// <summary>The same for small changes around an operating state of <paramref name="condition"/>; its ports are those of the DC network.</summary>
+    public static Network CompileSmallSignal(Board board, ParameterTable table, Condition condition, params ReadOnlySpan<Ammeter> ammeters)
+    {
+        ArgumentNullException.ThrowIfNull(board);
+        ArgumentNullException.ThrowIfNull(condition);
+        return new NetworkCompiler(board, table, condition, (part, elements, setting) => part.DescribeSmallSignal(elements, setting)).Compile(ammeters);
+    }
+
+    private Network Compile(ReadOnlySpan<Ammeter> ammeters)
     {
         nodeIndex[board.Reference] = -1;
         foreach (var node in board.Nodes) AddNode(node);
         foreach (var sensed in SensedParts()) Insert(sensed, 0);
-        if (ammeter is not null) Insert(ammeter.Part, ammeter.Pin);
+        foreach (var ammeter in ammeters) Insert(ammeter.Part, ammeter.Pin);
         var nodeCount = nodeIndex.Count - 1;
-        var ammeterRow = -1;
 
         foreach (var (designator, pin) in insertedNode.Keys)
         {
             var part = board.Find(designator)!;
-            var isAmmeter = ammeter is not null && ammeter.Part == designator && ammeter.Pin == pin;
-            var row = nodeCount + branchCount++;
-            var burden = Coefficient.Constant(isAmmeter ? ammeter!.BurdenOhms : 0);
+            var row = jointRow[(designator, pin)] = nodeCount + branchCount++;
+            var burden = 0.0;
+            foreach (var ammeter in ammeters)
+            {
+                if (ammeter.Part == designator && ammeter.Pin == pin) burden = ammeter.BurdenOhms;
+            }
+
             voltages.Add(new(
-                nodeIndex[part.Nodes[pin]], nodeIndex[insertedNode[(designator, pin)]], row, default, burden, Network.ControlKind.None, -1, -1, default, -1));
-            if (pin == 0) senseRow[designator] = row;
-            if (isAmmeter) ammeterRow = row;
+                nodeIndex[part.Nodes[pin]], nodeIndex[insertedNode[(designator, pin)]], row, default, Coefficient.Constant(burden),
+                Network.ControlKind.None, -1, -1, default, -1));
         }
 
         for (var i = 0; i < board.Parts.Length; i++) AddPart(board.Parts[i], i, nodeCount);
@@ -69,11 +82,12 @@ public sealed class NetworkCompiler
             Currents = [.. currents],
             Amplifiers = [.. amplifiers],
             Ports = [.. ports],
+            Reactances = [.. reactances],
             Leaks = Islands(nodeCount),
             NodeIndex = nodeIndex,
             NodeCount = nodeCount,
             Size = nodeCount + branchCount,
-            AmmeterRow = ammeterRow,
+            JointRows = jointRow,
             Parts = board.Parts,
             ThermalVolts = JunctionCurve.ThermalVolts(board.Celsius),
         };
@@ -97,7 +111,7 @@ public sealed class NetworkCompiler
     private void AddPart(Part part, int partIndex, int nodeCount)
     {
         var elements = new PartElements();
-        part.Describe(elements, condition.Switches.GetValueOrDefault(part.Designator));
+        describe(part, elements, condition.Switches.GetValueOrDefault(part.Designator));
         var pins = new int[part.Nodes.Length];
         for (var pin = 0; pin < pins.Length; pin++)
             pins[pin] = nodeIndex[insertedNode.GetValueOrDefault((part.Designator, pin), part.Nodes[pin])];
@@ -133,6 +147,9 @@ public sealed class NetworkCompiler
             currents.Add(new(Pin(e.From), Pin(e.To), Map(e.Amperes), kind, plus, minus, Map(e.Gain), partIndex));
         }
 
+        foreach (var e in elements.Reactances)
+            reactances.Add(new(Pin(e.From), Pin(e.To), nodeCount + branchCount++, Map(e.Value), Map(e.Ohms), e.IsCapacitance, partIndex));
+
         foreach (var e in elements.Junctions)
         {
             var hasTransport = e.TransportFrom >= 0;
@@ -154,7 +171,7 @@ public sealed class NetworkCompiler
     {
         null => (Network.ControlKind.None, -1, -1),
         Control.NodePair pair => (Network.ControlKind.Pair, nodeIndex[pair.Plus], nodeIndex[pair.Minus]),
-        Control.PartCurrent part => (Network.ControlKind.Current, senseRow[part.Designator], -1),
+        Control.PartCurrent part => (Network.ControlKind.Current, jointRow[(part.Designator, 0)], -1),
         _ => throw new ArgumentOutOfRangeException(nameof(control)),
     };
 

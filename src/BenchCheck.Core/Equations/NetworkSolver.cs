@@ -60,6 +60,9 @@ public sealed class NetworkSolver
 
     public NetworkSolver(JunctionLaw law) => this.law = law;
 
+    /// <summary>Workspace for small changes around what this one has solved.</summary>
+    internal SmallSignal.SmallSignalSolver SmallSignals { get; } = new();
+
     /// <summary>Node voltages and branch currents of the last solution, without any meter.</summary>
     public ReadOnlySpan<double> Unknowns => x.AsSpan(0, n);
 
@@ -171,6 +174,18 @@ public sealed class NetworkSolver
         gradient.Clear();
         Accumulate(lambda.AsSpan(0, n), at.AsSpan(0, n), loadedZ, scale, gradient);
         return volts * scale;
+    }
+
+    /// <summary>Adds Σ wₖ ∂zₖ/∂θ, the derivatives of the port currents of the last solution without any meter.</summary>
+    /// <param name="weights">w, one a port</param>
+    /// <param name="gradient">one entry a parameter; added to</param>
+    public void AddPortGradient(ReadOnlySpan<double> weights, Span<double> gradient)
+    {
+        // Aᵀ λ + Dᵀ μ = 0, Cᵀ λ = w + S μ, so (D A⁻¹ C + S)ᵀ μ = −w.
+        for (var k = 0; k < ports; k++) mu[k] = isLive[k] ? -weights[k] : 0;
+        if (ports > 0) LuFactor.SolveTransposed(tangent, ports, tangentPivot, mu.AsSpan(0, ports));
+        AdjointOf(new Measurement(-1, -1), 0);
+        Accumulate(lambda.AsSpan(0, n), x.AsSpan(0, n), z, 1, gradient);
     }
 
     /// <summary>Resistance between an unknown and the reference on the network last solved, every port at its slope.</summary>

@@ -7,7 +7,7 @@ namespace BenchCheck.Core.Fitting;
 
 /// <summary>A board with the places where it is read: the prediction f(φ) of every reading and its Jacobian.</summary>
 /// <remarks>
-/// Holds one compiled network for each condition in use, and one for each inserted ammeter. Readings of one meter, function and range share
+/// Readings of one meter, function and range share
 /// a scale error ε, so the meter shows (1 + ε) times what is there. Shapes: m readings, p fitted parameters; Jacobian m×p, row-major, in
 /// units of φ. Remembers the devices' last operating state as the start of the next search; not for use by two threads at once.
 /// </remarks>
@@ -20,7 +20,7 @@ public sealed class BoardModel
     private const double DropDrift = 2.5e-3;
 
     private readonly NetworkSolver solver;
-    private readonly Setup[] setups;
+    private readonly ReadingSetup[] setups;
     private readonly double[] theta;
     private readonly double[] gradient;
     private readonly int[] scaleOfReading;
@@ -47,9 +47,14 @@ public sealed class BoardModel
         gradient = new double[Table.Count];
         ReadingCount = probes.Count;
 
+        // What only small signals can tell is left out of boards that know none.
+        var hasFrequency = board.Conditions.Any(c => c.Hertz is not null);
+        var hasSmallSignal = board.Conditions.Any(c => c.IsSmallSignal);
         var parameters = ImmutableArray.CreateBuilder<FitParameter>();
         for (var i = 0; i < Table.Count; i++)
         {
+            var kind = Table.Entries[i].Kind;
+            if (kind.IsReactive ? !hasFrequency : kind.IsSmallSignal && !hasSmallSignal) continue;
             if (FitParameter.Of(Table.Entries[i], i) is { } parameter) parameters.Add(parameter);
         }
 
@@ -72,7 +77,7 @@ public sealed class BoardModel
         if (driftingConditions.Length > 1) drifts = Drifts(driftingConditions, parameters);
         Parameters = parameters.ToImmutable();
         fitted = [.. Parameters];
-        setups = Arrange(board, probes);
+        setups = new ReadingArrangement(board, Table, probes, solver).Setups();
     }
 
     /// <summary>The board read where no reading was taken: no scale errors, no drift between conditions, only the board's own parameters.</summary>
@@ -105,20 +110,20 @@ public sealed class BoardModel
         Load(phi);
         foreach (var setup in setups)
         {
-            Apply(setup.Network.Condition.Name, phi);
-            solver.Solve(setup.Network, theta, setup.PortStart);
-            solver.PortCurrents.CopyTo(setup.PortStart);
-            for (var k = 0; k < setup.Readings.Length; k++)
+            Apply(setup.Condition, phi);
+            setup.Solve(theta);
+            var readings = setup.Readings;
+            for (var k = 0; k < readings.Length; k++)
             {
-                var j = setup.Readings[k];
+                var j = readings[k];
                 var scale = scaleOfReading[j] < 0 ? 1 : 1 + phi[scaleOfReading[j]];
                 if (jacobian.IsEmpty)
                 {
-                    predicted[j] = scale * solver.Read(setup.Measurements[k], []);
+                    predicted[j] = scale * setup.Read(k, []);
                     continue;
                 }
 
-                var value = solver.Read(setup.Measurements[k], gradient);
+                var value = setup.Read(k, gradient);
                 predicted[j] = scale * value;
                 var row = jacobian.Slice(j * p, p);
                 row.Clear();
@@ -132,7 +137,7 @@ public sealed class BoardModel
                 if (scaleOfReading[j] >= 0) row[scaleOfReading[j]] = value;
                 foreach (var drift in drifts)
                 {
-                    if (drift.Condition == setup.Network.Condition.Name)
+                    if (drift.Condition == setup.Condition)
                         row[drift.Parameter] = scale * gradient[drift.ThetaIndex] * (drift.IsRatio ? theta[drift.ThetaIndex] : 1);
                 }
             }
@@ -152,7 +157,7 @@ public sealed class BoardModel
     /// <summary>Forgets the remembered operating states, so that the next prediction does not depend on those before it.</summary>
     public void Forget()
     {
-        foreach (var setup in setups) setup.PortStart.AsSpan().Clear();
+        foreach (var setup in setups) setup.Forget();
     }
 
     private void Load(ReadOnlySpan<double> phi)
@@ -208,62 +213,6 @@ public sealed class BoardModel
         probe.ScaleGroupName, ParameterKind.ScaleError, null,
         Quantities.Nominal.Within(0, Quantities.Tolerance.Absolute(probe.Function.ReadingFraction)), -1, false, 0, probe.ScaleUncertainty);
 
-    private Setup[] Arrange(Board board, IReadOnlyList<Probe> probes)
-    {
-        var plain = new Dictionary<string, List<int>>(StringComparer.Ordinal);
-        var result = new List<Setup>();
-        for (var j = 0; j < probes.Count; j++)
-        {
-            var probe = probes[j];
-            var condition = board.FindCondition(probe.Condition)
-                ?? throw new ArgumentException($"the board has no condition \"{probe.Condition}\"", nameof(probes));
-            if (probe.Quantity == ReadingQuantity.Current)
-            {
-                var (part, pin) = Joint(board, probe.At);
-                var network = NetworkCompiler.Compile(board, Table, condition, new Ammeter(part, pin, probe.Function.BurdenVolts / probe.Range));
-                result.Add(new Setup(network, [j], [new Measurement(network.AmmeterRow, -1)]));
-            }
-            else
-            {
-                if (!plain.TryGetValue(condition.Name, out var list)) plain[condition.Name] = list = [];
-                list.Add(j);
-            }
-        }
-
-        foreach (var (name, readings) in plain)
-        {
-            var network = NetworkCompiler.Compile(board, Table, board.FindCondition(name)!);
-            result.Add(new Setup(network, [.. readings], [.. readings.Select(j => Connect(network, probes[j], board.Reference))]));
-        }
-
-        return [.. result];
-    }
-
-    private static Measurement Connect(Network network, Probe probe, string reference)
-    {
-        var (high, low) = (network.IndexOf(probe.At), network.IndexOf(probe.Against ?? reference));
-        return probe.Quantity switch
-        {
-            ReadingQuantity.Voltage => new Measurement(high, low, LoadSiemens: 1 / probe.Meter.InputOhms),
-            ReadingQuantity.Resistance => new Measurement(high, low, TestAmperes: probe.Function.TestVolts / probe.Range),
-            _ => throw new NotSupportedException($"a reading of {probe.Quantity.Name()} cannot be predicted in a DC condition"),
-        };
-    }
-
-    /// <summary>Part and pin of "R3" (its first pin) or "Q1.base".</summary>
-    private static (string Part, int Pin) Joint(Board board, string at)
-    {
-        var dot = at.LastIndexOf('.');
-        if (dot > 0 && board.Find(at[..dot]) is { } owner && owner.Kind.Pins.IndexOf(at[(dot + 1)..]) is >= 0 and var pin) return (owner.Designator, pin);
-        return board.Find(at) is { } part ? (part.Designator, 0) : throw new ArgumentException($"the board has no part or pin \"{at}\"", nameof(at));
-    }
-
     /// <summary>A parameter that is a little different in one condition.</summary>
     private readonly record struct Drift(string Condition, int ThetaIndex, int Parameter, bool IsRatio);
-
-    private sealed record Setup(Network Network, int[] Readings, Measurement[] Measurements)
-    {
-        /// <summary>The devices' port currents last found, as the next start.</summary>
-        public double[] PortStart { get; } = new double[Network.PortCount];
-    }
 }

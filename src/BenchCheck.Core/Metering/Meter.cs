@@ -15,13 +15,19 @@ public sealed record Meter(
         "hand-held", 10e6, 6000,
         new MeterFunction(0.005, 2, [0.6, 6, 60, 600]),
         new MeterFunction(0.01, 3, [600e-6, 6e-3, 60e-3, 0.6, 6]),
-        new MeterFunction(0.008, 2, [600, 6e3, 60e3, 600e3, 6e6, 60e6]));
+        new MeterFunction(0.008, 2, [600, 6e3, 60e3, 600e3, 6e6, 60e6]))
+    {
+        AlternatingVoltage = new MeterFunction(0.01, 3, [6e-3, 60e-3, 0.6, 6, 60, 600]),
+    };
+
+    /// <summary>RMS voltage of a signal; null when not stated.</summary>
+    public MeterFunction? AlternatingVoltage { get; init; }
 
     public MeterFunction? FunctionFor(ReadingQuantity quantity) => quantity switch
     {
         ReadingQuantity.Voltage => Voltage,
         ReadingQuantity.Current => Current,
-        ReadingQuantity.Resistance or ReadingQuantity.InputResistance or ReadingQuantity.OutputResistance => Resistance,
-        _ => null,
+        ReadingQuantity.Resistance => Resistance,
+        _ => MeterFunction.Ratio,
     };
 }

@@ -10,6 +10,9 @@ namespace BenchCheck.Core.Metering;
 /// <param name="TestVolts">for resistance: voltage across the leads at full scale</param>
 public sealed record MeterFunction(double ReadingFraction, double Counts, ImmutableArray<double> Ranges, double BurdenVolts = 0, double TestVolts = 0.25)
 {
+    /// <summary>A ratio of two AC readings, or a resistance found from two: 2 %, that is twice the 1 % usual for AC; common practice, no source.</summary>
+    public static MeterFunction Ratio { get; } = new(0.02, 0, []);
+
     /// <summary>The lowest range that shows <paramref name="value"/>; the highest when none does.</summary>
     public double RangeFor(double value)
     {

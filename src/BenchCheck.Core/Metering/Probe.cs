@@ -9,17 +9,24 @@ namespace BenchCheck.Core.Metering;
 public sealed record Probe(string Condition, ReadingQuantity Quantity, string At, string? Against, Meter Meter, double Range)
 {
     /// <summary>The function of the meter in use; that of <see cref="Meter.Usual"/> when the meter's description lacks it.</summary>
-    public MeterFunction Function => Meter.FunctionFor(Quantity) ?? Meter.Usual.FunctionFor(Quantity) ?? Exact;
+    public MeterFunction Function => Of(Meter) ?? Of(Meter.Usual) ?? MeterFunction.Ratio;
 
-    /// <summary>Function of a quantity that no meter shows directly (a gain): its uncertainty must be stated with the reading.</summary>
-    private static readonly MeterFunction Exact = new(0.01, 0, []);
+    /// <summary>True for a reading of small signals: an AC voltage is then another function of the meter.</summary>
+    public bool IsSmallSignal { get; init; }
+
+    /// <summary>True when a ratio is compared without its sign: an AC meter shows none, so a sign counts only where the reading is negative.</summary>
+    public bool IsMagnitude { get; init; }
 
     public static Probe Of(Bench bench, Reading reading)
     {
         ArgumentNullException.ThrowIfNull(bench);
         ArgumentNullException.ThrowIfNull(reading);
         var meter = bench.MeterOf(reading);
-        var probe = new Probe(reading.Condition, reading.Quantity, reading.At, reading.Against, meter, 0);
+        var probe = new Probe(reading.Condition, reading.Quantity, reading.At, reading.Against, meter, 0)
+        {
+            IsSmallSignal = bench.Board.FindCondition(reading.Condition) is { IsSmallSignal: true },
+            IsMagnitude = reading.Value >= 0,
+        };
         return probe with { Range = reading.Range ?? probe.Function.RangeFor(reading.Value) };
     }
 
@@ -37,4 +44,6 @@ public sealed record Probe(string Condition, ReadingQuantity Quantity, string At
 
     /// <summary>What shares the scale error: "handheld, voltage, 6 V range".</summary>
     public (string Meter, ReadingQuantity Function, double Range) ScaleGroup => (Meter.Name, Quantity, Range);
+
+    private MeterFunction? Of(Meter meter) => IsSmallSignal && Quantity == ReadingQuantity.Voltage ? meter.AlternatingVoltage : meter.FunctionFor(Quantity);
 }

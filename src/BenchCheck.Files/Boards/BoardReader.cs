@@ -24,7 +24,7 @@ internal sealed class BoardReader(ProblemList problems)
         var reference = ReadReference(top);
         CheckControls();
         var adjacent = ReadAdjacent(top);
-        var conditions = top.TakeTable("conditions") is { } table ? new ConditionReader(parts, broken, problems).Read(table) : [];
+        var conditions = top.TakeTable("conditions") is { } table ? new ConditionReader(parts, broken, reference, problems).Read(table) : [];
         var meters = ReadMeters(top.TakeTable("meters"));
         top.Finish();
         if (problems.HasErrors) return new BoardFileResult(null, problems.InOrder());

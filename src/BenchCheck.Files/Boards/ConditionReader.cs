@@ -7,8 +7,12 @@ namespace BenchCheck.Files;
 /// <summary>Reads the conditions of a board.</summary>
 /// <param name="parts">parts that were read</param>
 /// <param name="broken">designators of parts that are in the file but could not be read: no more is said of them</param>
-internal sealed class ConditionReader(IReadOnlyDictionary<string, Part> parts, IReadOnlySet<string> broken, ProblemList problems)
+/// <param name="reference">the board's reference node</param>
+internal sealed class ConditionReader(IReadOnlyDictionary<string, Part> parts, IReadOnlySet<string> broken, string reference, ProblemList problems)
 {
+    private static readonly string[] SmallSignalKeys = ["operating_point", "frequency", "drive"];
+    private static readonly string[] RestKeys = ["supplies", "set", "switches"];
+
     public ImmutableArray<Condition> Read(TomlTable conditions)
     {
         var read = ImmutableArray.CreateBuilder<Condition>();
@@ -46,12 +50,45 @@ internal sealed class ConditionReader(IReadOnlyDictionary<string, Part> parts, I
         var switches = ReadSwitches(table);
         var point = table.TakeText("operating_point");
         var frequency = table.TakeNumber("frequency", Unit.Hertz, Limits.Hertz);
+        var drive = table.TakeTable("drive") is { } generator ? ReadDrive(new TableReader(generator, $"{table.Subject}: drive", problems)) : null;
         if (isSmallSignal && point is null)
             problems.Error(table.Place, $"condition {name} has no operating_point", "operating_point = the name of the DC condition that it stands on");
-        if (!isSmallSignal && (point ?? table.Take("frequency")?.Value) is { } stray)
-            problems.Error(stray.Place, $"condition {name}: operating_point and frequency", "kind = \"small-signal\" beside them");
+        if (!isSmallSignal && SmallSignalKeys.Select(table.Take).OfType<TomlEntry>().FirstOrDefault() is { } stray)
+            problems.Error(stray.Place, $"condition {name}: {stray.Key}", "kind = \"small-signal\" beside it");
+        if (isSmallSignal && RestKeys.Select(table.Take).OfType<TomlEntry>().FirstOrDefault() is { } misplaced)
+            problems.Error(misplaced.Place, $"condition {name}: {misplaced.Key} in a small-signal condition", "it in the DC condition that operating_point names");
         table.Finish();
-        return new Condition(name, removed, set, switches) { OperatingPoint = isSmallSignal ? point?.Text : null, Hertz = isSmallSignal ? frequency : null };
+        return isSmallSignal
+            ? new Condition(name, removed, set, switches) { OperatingPoint = point?.Text ?? "", Hertz = frequency, Drive = drive }
+            : new Condition(name, removed, set, switches);
+    }
+
+    /// <summary>The generator: where it is connected, and what it is set to.</summary>
+    private Drive? ReadDrive(TableReader table)
+    {
+        var at = ReadNode(table, "at");
+        if (at is null && table.Take("at") is null) problems.Error(table.Place, $"{table.Subject} has no place", "at = the node that the generator drives");
+        var against = ReadNode(table, "against") ?? reference;
+        var volts = table.TakeNumber("value", Unit.Volt, new Limits(1e-9, 1e3, Unit.Volt, true, "the RMS voltage that the generator is set to"));
+        var ohms = table.TakeNumber("resistance", Unit.Ohm, new Limits(0, 1e9, Unit.Ohm)) ?? 0;
+        table.Finish();
+        if (at is null) return null;
+        if (at == against)
+        {
+            problems.Error(table.Place, $"{table.Subject}: {at} against itself", "two different nodes");
+            return null;
+        }
+
+        return new Drive(at, against, volts, ohms);
+    }
+
+    private string? ReadNode(TableReader table, string key)
+    {
+        if (table.TakeText(key) is not { } text) return null;
+        var nodes = parts.Values.SelectMany(p => p.Nodes).Distinct(StringComparer.Ordinal).ToList();
+        if (nodes.Contains(text.Text) || broken.Count > 0) return text.Text;
+        problems.Error(text.Place, $"{table.Subject}: no node {TextFault.Quote(text.Text)} on the board", NearMiss.List(nodes), NearMiss.Suggest(text.Text, nodes));
+        return null;
     }
 
     private string? Choice(TableReader table, string key, string first, string second)
@@ -122,6 +159,7 @@ internal sealed class ConditionReader(IReadOnlyDictionary<string, Part> parts, I
 
     private void CheckOperatingPoint(Condition condition, TomlPlace place, IEnumerable<Condition> all)
     {
+        if (condition.OperatingPoint!.Length == 0) return;
         var dc = all.Where(c => c is { IsSmallSignal: false, SuppliesRemoved: false }).Select(c => c.Name).ToList();
         if (!dc.Contains(condition.OperatingPoint!))
             problems.Error(place, $"condition {condition.Name}: operating_point {TextFault.Quote(condition.OperatingPoint)}",

@@ -30,13 +30,14 @@ internal sealed partial class MeterReader(ProblemList problems, Assumptions assu
         var input = ReadInput(table, name);
         var counts = ReadCounts(table, name);
         var voltage = ReadFunction(table, "voltage", Unit.Volt, Limits.PositiveVolts);
+        var alternating = ReadFunction(table, "ac_voltage", Unit.Volt, Limits.PositiveVolts);
         var current = ReadFunction(table, "current", Unit.Ampere, new Limits(1e-12, 1e4, Unit.Ampere, true));
         var resistance = ReadFunction(table, "resistance", Unit.Ohm, new Limits(1e-3, 1e15, Unit.Ohm, true));
         table.Take("note");
         table.Finish();
-        if (voltage is null && current is null && resistance is null && !table.Problems.HasErrors)
-            problems.Warning(table.Place, $"meter {name} has no function", "voltage, current or resistance with its accuracy");
-        return new Meter(name, input, counts, voltage, current, resistance);
+        if (voltage is null && alternating is null && current is null && resistance is null && !table.Problems.HasErrors)
+            problems.Warning(table.Place, $"meter {name} has no function", "voltage, ac_voltage, current or resistance with its accuracy");
+        return new Meter(name, input, counts, voltage, current, resistance) { AlternatingVoltage = alternating };
     }
 
     private double ReadInput(TableReader table, string name)

@@ -98,7 +98,9 @@ internal sealed record PartSyntax(PartKind Kind, Func<PartReader, ImmutableArray
         var gain = p.OrUsual("gain", Unit.One, UsualTolerance.TransistorGain, Limits.TransistorGain, Transistor.UsualGain);
         var drop = p.OrUsual("drop", Unit.Volt, UsualTolerance.Drop, Limits.Drop, Transistor.UsualDrop);
         var saturation = p.OrUsual("saturation", Unit.Volt, UsualTolerance.Saturation, Limits.Saturation, Transistor.UsualSaturation);
-        return gain is null || drop is null || saturation is null ? null : new Transistor(kind, p.Designator, nodes, gain, drop, saturation);
+        var output = p.Optional("output_resistance", Unit.Ohm, UsualTolerance.OutputResistance, Limits.SeriesResistance);
+        if (gain is null || drop is null || saturation is null || (output is null && p.Has("output_resistance"))) return null;
+        return new Transistor(kind, p.Designator, nodes, gain, drop, saturation) { OutputOhms = output };
     }
 
     private static OpAmp? MakeOpAmp(PartReader p, ImmutableArray<string> nodes)

@@ -46,12 +46,22 @@ internal sealed class ReadingCheck(BoardNames names)
                 names.Board.Conditions.FirstOrDefault(c => c.IsSmallSignal) is { } signal
                     ? $"write {signal.Name} in column condition"
                     : "add a condition with kind = \"small-signal\" and its operating_point to the board file"),
+        ReadingQuantity.Voltage or ReadingQuantity.Current when condition is { IsSmallSignal: true, Drive: not { Volts: not null } } =>
+            new TextFault($"{quantity.Name()} in the small-signal condition {condition.Name}", "a generator whose voltage is known",
+                $"state it in the board file, drive = {{ at = \"…\", value = \"10 mV\" }}, or read a gain"),
         _ => null,
     };
 
+    /// <summary>Why a current gain cannot be counted; null when it can.</summary>
+    public static TextFault? Input(ReadingQuantity quantity, string? against, Condition condition) =>
+        quantity == ReadingQuantity.CurrentGain && against is null && condition.Drive is null
+            ? new TextFault("a current gain with nothing in column against", "the part or pin that carries the input current",
+                "or a drive in the condition, whose current is then meant")
+            : null;
+
     /// <summary>Why a meter cannot have given the reading; null when it can, or when the uncertainty is stated.</summary>
-    public static TextFault? Meter(ReadingQuantity quantity, Meter meter, double? uncertainty) =>
-        uncertainty is not null || meter.FunctionFor(quantity) is not null
+    public static TextFault? Meter(ReadingQuantity quantity, Condition condition, Meter meter, double? uncertainty) =>
+        uncertainty is not null || (condition.IsSmallSignal && quantity == ReadingQuantity.Voltage ? meter.AlternatingVoltage : meter.FunctionFor(quantity)) is not null
             ? null
             : new TextFault($"{quantity.Name()} with meter {meter.Name}, whose accuracy for it is not stated", "a meter with that function",
                 "describe it in the board file, or state the standard uncertainty in column uncertainty");

@@ -8,11 +8,14 @@ internal sealed class SolvedBoard
 {
     private readonly double[] theta;
 
+    private readonly Ammeter? inserted;
+
     public SolvedBoard(Board board, JunctionLaw law = JunctionLaw.ConstantDrop, Condition? condition = null, Ammeter? ammeter = null)
     {
         Board = board;
         Table = new ParameterTable(board);
-        Network = NetworkCompiler.Compile(board, Table, condition ?? board.Conditions[0], ammeter);
+        inserted = ammeter;
+        Network = NetworkCompiler.Compile(board, Table, condition ?? board.Conditions[0], ammeter is null ? [] : [ammeter]);
         Solver = new NetworkSolver(law);
         theta = BoardSketch.NominalValues(Table);
         Solver.Solve(Network, theta);
@@ -30,7 +33,7 @@ internal sealed class SolvedBoard
 
     public OperatingPoint Point => OperatingPoint.Of(Network, Solver, theta);
 
-    public double AmmeterAmperes => Solver.Unknowns[Network.AmmeterRow];
+    public double AmmeterAmperes => Solver.Unknowns[Network.RowOf(inserted!)];
 
     public double Volts(string node, string against = "0") => At(node) - At(against);
 
