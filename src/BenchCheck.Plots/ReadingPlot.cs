@@ -83,7 +83,7 @@ public static class ReadingPlot
     private static IEnumerable<string> Names(CheckResult result, ImmutableArray<ReadingResult> rows)
     {
         var hasConditions = result.Readings.Select(r => r.Reading.Condition).Distinct().Skip(1).Any();
-        return rows.Select(r => FigureText.Clean(Words.Place(r.Reading, result.Reference) + (hasConditions ? $", {r.Reading.Condition}" : "")));
+        return rows.Select(r => FigureText.Clean(r.Reading.Words(result.Reference) + (hasConditions ? $", {r.Reading.Condition}" : "")));
     }
 
     private static RowColumn[] Columns(ImmutableArray<ReadingResult> rows) =>

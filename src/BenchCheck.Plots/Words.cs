@@ -30,13 +30,6 @@ internal static class Words
         _ => "no",
     };
 
-    /// <summary>Where a reading was taken, the condition left out: "C1", "C1 to E1", "current R3".</summary>
-    public static string Place(Reading reading, string reference)
-    {
-        var at = reading.Against is null || reading.Against == reference ? reading.At : $"{reading.At} to {reading.Against}";
-        return reading.Quantity == ReadingQuantity.Voltage ? at : $"{reading.Quantity.Name()} {at}";
-    }
-
     public static string Value(double value, Unit unit) => EngineeringNotation.Format(value, unit);
 
     public static string Signed(double value, Unit unit) => (value > 0 ? "+" : "") + EngineeringNotation.Format(value, unit, 3);

@@ -30,7 +30,7 @@ public sealed partial class HtmlReportTests
         var rows = Rows(Parsed(Checks.Healthy), "Readings");
         Assert.Equal(Checks.Healthy.Readings.Length, rows.Length);
         Assert.Equal(["C1", "in", "6.610 ± 0.092 V", "6.771 V", "6.105..7.437 V", "-161 mV", "-0.22", "6.650 V", "-0.11"], rows[2]);
-        Assert.Equal("current R3", rows[3][0]);
+        Assert.Equal("R3 current", rows[3][0]);
     }
 
     [Fact]

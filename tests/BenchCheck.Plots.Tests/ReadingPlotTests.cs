@@ -16,7 +16,7 @@ public sealed class ReadingPlotTests
         var texts = ReadingPlot.Of(Checks.Healthy).Texts();
         Assert.Contains("Circulation-fan stage, serial 0041", texts);
         Assert.Contains(texts, t => t.StartsWith("Agrees: The readings are what a healthy board may show", StringComparison.Ordinal));
-        foreach (var expected in new[] { "VCC", "C1", "current R3", "resistance B1", "12.02 V", "6.610 V", "6.771 V", "2.874 mA", "2.905 mA", "8.213 kΩ", "-0.22" })
+        foreach (var expected in new[] { "VCC", "C1", "R3 current", "B1", "12.02 V", "6.610 V", "6.771 V", "2.874 mA", "2.905 mA", "8.213 kΩ", "-0.22" })
             Assert.Contains(expected, texts);
     }
 

@@ -12,6 +12,8 @@ public static class Cautions
 {
     public const double HazardousVoltsDc = 60;
 
+    public const double HazardousVoltsRms = 30;
+
     public static readonly ImmutableArray<string> Usual =
     [
         "Measure resistance only with the supplies removed and the capacitors discharged.",
@@ -28,6 +30,13 @@ public static class Cautions
             .. Usual,
         ]
         : Usual;
+
+    /// <summary>The strong caution for a signal; null where it is not hazardous.</summary>
+    /// <param name="volts">RMS</param>
+    public static string? ForSignal(double volts, string place) => Math.Abs(volts) <= HazardousVoltsRms
+        ? null
+        : $"HAZARDOUS VOLTAGE: a signal of {EngineeringNotation.Format(Math.Abs(volts), Unit.Volt)} at {place}, above {HazardousVoltsRms} V RMS. "
+            + "Do not touch the live board; switch the generator down before any work.";
 
     public static bool IsHazardous(double volts) => Math.Abs(volts) > HazardousVoltsDc;
 }

@@ -22,7 +22,7 @@ internal static class Checker
         var verdict = degrees == 0 ? BoardVerdict.Undecided : VerdictRule.Verdict(pValue, alpha);
         var results = ReadingResults(readings, plan, fit, settings);
         var estimates = Estimates.Of(fit, settings.Confidence);
-        var conditions = bench.Board.Conditions.Where(c => !c.IsSmallSignal && plan.Probes.Any(p => p.Condition == c.Name)).ToArray();
+        var conditions = RestConditions(bench.Board, plan);
         var points = conditions.Select(c => model.Operate(fit.Phi, c)).ToArray();
         var (volts, place) = Highest(bench.Board, points, readings);
         var result = new CheckResult
@@ -41,11 +41,27 @@ internal static class Checker
             Correlated = Estimates.Correlated(fit, estimates),
             States = [.. points.SelectMany(p => OperatingReport.States(bench.Board, p))],
             Dissipation = OperatingReport.Dissipation(bench.Board, points),
-            Cautions = Cautions.For(volts, place),
-            Assumed = bench.Assumed,
+            Cautions =
+            [
+                .. plan.Probes.Select((p, i) => p is { IsSmallSignal: true, Quantity: ReadingQuantity.Voltage } ? Cautions.ForSignal(plan.Measured[i], p.At) : null)
+                    .OfType<string>().Take(1),
+                .. Cautions.For(volts, place),
+            ],
+            Assumed =
+            [
+                .. bench.Assumed, .. plan.Probes.Any(p => p.IsSmallSignal) ? SmallSignalAssumptions.Of(bench.Board) : [],
+                .. SmallSignalAssumptions.Of(readings.Readings),
+            ],
             Remarks = fit.Summary.Converged ? [] : [$"The fit stopped before it stood still ({fit.Summary}): read the estimates with care."],
         };
         return (result, fit);
+    }
+
+    /// <summary>The DC conditions that were read, at rest or with small signals on top.</summary>
+    private static Condition[] RestConditions(Board board, ReadingPlan plan)
+    {
+        var read = plan.Probes.Select(p => board.FindCondition(p.Condition)!).Select(c => c.OperatingPoint ?? c.Name).ToHashSet(StringComparer.Ordinal);
+        return [.. board.Conditions.Where(c => read.Contains(c.Name))];
     }
 
     private static ImmutableArray<ReadingResult> ReadingResults(ReadingSet readings, ReadingPlan plan, BoardFit fit, CheckSettings settings)

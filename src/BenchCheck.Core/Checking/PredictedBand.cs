@@ -15,14 +15,15 @@ public readonly record struct PredictedBand(double Low, double High)
     /// <param name="start">p values: nominal, unknowns at their estimates</param>
     /// <param name="predicted">m predictions at start</param>
     /// <param name="jacobian">m×p derivatives at start</param>
+    /// <param name="drawn">told how many draws of a Monte Carlo band are done</param>
     public static PredictedBand[] Of(
-        BoardModel model, ReadOnlySpan<double> start, ReadOnlySpan<double> predicted, ReadOnlySpan<double> jacobian, CheckSettings settings)
+        BoardModel model, ReadOnlySpan<double> start, ReadOnlySpan<double> predicted, ReadOnlySpan<double> jacobian, CheckSettings settings, Action<int>? drawn = null)
     {
         ArgumentNullException.ThrowIfNull(model);
         ArgumentNullException.ThrowIfNull(settings);
         return settings.Bands switch
         {
-            BandMethod.MonteCarlo => MonteCarlo(model, start, settings),
+            BandMethod.MonteCarlo => MonteCarlo(model, start, settings, drawn),
             BandMethod.WorstCase => WorstCase(model, start, predicted, jacobian),
             _ => FirstOrder(model, predicted, jacobian, settings.Confidence),
         };
@@ -59,7 +60,7 @@ public readonly record struct PredictedBand(double Low, double High)
     }
 
     /// <summary>JCGM 101:2008: rectangular within each tolerance, probabilistically symmetric interval.</summary>
-    private static PredictedBand[] MonteCarlo(BoardModel model, ReadOnlySpan<double> start, CheckSettings settings)
+    private static PredictedBand[] MonteCarlo(BoardModel model, ReadOnlySpan<double> start, CheckSettings settings, Action<int>? drawn)
     {
         var random = new Random(settings.Seed);
         var values = new List<double>[model.ReadingCount];
@@ -68,6 +69,7 @@ public readonly record struct PredictedBand(double Low, double High)
         var predicted = new double[model.ReadingCount];
         for (var draw = 0; draw < settings.Draws; draw++)
         {
+            drawn?.Invoke(draw);
             for (var k = 0; k < model.BoardParameterCount; k++)
             {
                 if (!model.Fitted[k].IsUnknown) phi[k] = start[k] + HalfWidth(model, k) * (2 * random.NextDouble() - 1);

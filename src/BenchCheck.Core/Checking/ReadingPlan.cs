@@ -21,7 +21,7 @@ public sealed record ReadingPlan(ImmutableArray<Probe> Probes, ImmutableArray<bo
         for (var i = 0; i < noise.Length; i++)
         {
             var reading = readings.Readings[i];
-            var own = reading.StatedUncertainty ?? probes[i].CountsUncertainty;
+            var own = reading.StatedUncertainty ?? probes[i].OwnUncertainty;
             var least = LeastNoise * Math.Max(Math.Abs(reading.Value), Math.Abs(probes[i].Range) / 1000);
             noise[i] = Math.Max(own * own + reading.RepeatUncertainty * reading.RepeatUncertainty, least * least);
         }

@@ -164,8 +164,8 @@ internal sealed class FaultSearch
         var result = new double[noise.Length];
         for (var i = 0; i < noise.Length; i++)
         {
-            var quantity = probes[i].Quantity;
-            var largest = Enumerable.Range(0, noise.Length).Where(k => probes[k].Quantity == quantity).Max(k => Math.Abs(measured[k]));
+            var probe = probes[i];
+            var largest = Enumerable.Range(0, noise.Length).Where(k => probes[k].IsLike(probe)).Max(k => Math.Abs(measured[k]));
             var breadth = UnexplainedShare * largest;
             result[i] = noise[i] + breadth * breadth;
         }

@@ -11,8 +11,8 @@ namespace BenchCheck.Core.Diagnosis;
 /// <summary>Ranks the readings not yet taken by what each is expected to tell about the suspects.</summary>
 /// <remarks>
 /// Each likely fault predicts each candidate with its own uncertainty: that of its fitted parameters, carried through the Jacobian, and
-/// the meter's. Candidates are the node voltages of the DC conditions and, where the board has an unpowered condition, resistances between
-/// nodes that share a part.
+/// the meter's. Candidates are the node voltages of the DC conditions, resistances between nodes that share a part on the unpowered board and,
+/// where a generator is connected, the gain to every node and the resistance that the generator meets.
 /// </remarks>
 internal sealed class NextReadings(Bench bench, ReadingPlan plan, EvidenceFit fit, NetworkSolver solver)
 {
@@ -60,7 +60,7 @@ internal sealed class NextReadings(Bench bench, ReadingPlan plan, EvidenceFit fi
         }
 
         // Among readings that tell about the same, one that needs no change of the set-up comes first.
-        return [.. ranked.OrderByDescending(r => Math.Round(r.Bits, 1)).ThenBy(r => r.Caution is null ? 0 : 1).ThenByDescending(r => r.Bits).Take(MostReadings)];
+        return [.. ranked.OrderByDescending(r => Math.Round(r.Bits, 1)).ThenBy(r => r.Caution is null && r.Quantity == ReadingQuantity.Voltage ? 0 : 1).ThenByDescending(r => r.Bits).Take(MostReadings)];
     }
 
     private Probe[] Candidates()
@@ -68,9 +68,16 @@ internal sealed class NextReadings(Bench bench, ReadingPlan plan, EvidenceFit fi
         var board = bench.Board;
         var meter = bench.Meters[0];
         var result = new List<Probe>();
-        foreach (var condition in board.Conditions.Where(c => !c.IsSmallSignal))
+        foreach (var condition in board.Conditions)
         {
-            if (condition.SuppliesRemoved)
+            if (condition.IsSmallSignal)
+            {
+                if (condition.Drive is not { } drive || drive.Against != board.Reference) continue;
+                var gain = new Probe(condition.Name, ReadingQuantity.Gain, drive.At, drive.At, meter, 1) { IsSmallSignal = true };
+                result.AddRange(board.Nodes.Skip(1).Where(n => n != drive.At).Select(n => gain with { At = n }));
+                result.Add(gain with { Quantity = ReadingQuantity.InputResistance, Against = board.Reference });
+            }
+            else if (condition.SuppliesRemoved)
             {
                 var pairs = board.Parts.Where(p => p is not (Supply or CurrentSource))
                     .SelectMany(p => p.Nodes.SelectMany((a, i) => p.Nodes.Skip(i + 1).Select(b => (a, b)))).Where(x => x.a != x.b)
@@ -114,13 +121,9 @@ internal sealed class NextReadings(Bench bench, ReadingPlan plan, EvidenceFit fi
             var sum = 0.0;
             for (var k = 0; k < p; k++) sum += row[k] * LuFactor.Dot(covariance.AsSpan(k * p, p), row);
             var probe = candidates[c] with { Range = candidates[c].Function.RangeFor(values[c]) };
-            var (own, scale) = (probe.CountsUncertainty, probe.ScaleUncertainty * values[c]);
-            if (candidates[c].Quantity == ReadingQuantity.Resistance)
-            {
-                // An ohmmeter shows nothing above its highest range: all such values are the same to it.
-                var top = probe.Function.Ranges.IsEmpty ? double.PositiveInfinity : probe.Function.Ranges[^1];
-                if (values[c] > top) (values[c], sum) = (top, 0);
-            }
+            var (own, scale) = (probe.OwnUncertainty, probe.ScaleUncertainty * values[c]);
+            // Nothing is shown above the highest range: all such values are the same to the meter.
+            if (Top(candidates[c]) is { } top && values[c] > top) (values[c], sum) = (top, 0);
 
             mean[c, h] = values[c];
             variance[c, h] = Math.Max(0, sum) + own * own + scale * scale;
@@ -129,20 +132,33 @@ internal sealed class NextReadings(Bench bench, ReadingPlan plan, EvidenceFit fi
         return true;
     }
 
+    /// <summary>The highest resistance that can be read; null for other quantities.</summary>
+    private static double? Top(Probe probe) => probe.Quantity switch
+    {
+        ReadingQuantity.Resistance when !probe.Function.Ranges.IsEmpty => probe.Function.Ranges[^1],
+        ReadingQuantity.InputResistance => 10 * probe.Meter.InputOhms,
+        _ => null,
+    };
+
     private NextReading Describe(Probe probe, double bits, (Fault Fault, int Group, double Probability, double Value, double Sigma)[] predictions)
     {
-        var unit = probe.Quantity.Unit();
         var leaders = predictions.GroupBy(x => x.Group).Select(g => g.MaxBy(x => x.Probability)).OrderBy(x => x.Group).ToArray();
-        var shown = Outcomes(predictions).Take(MostOutcomes).Select(x => $"near {EngineeringNotation.Format(x.Value, unit, 3)}: {x.Words}");
-        var place = probe.Against == bench.Board.Reference ? probe.At : $"{probe.At} against {probe.Against}";
+        var shown = Outcomes(predictions).Take(MostOutcomes).Select(x => $"{Shown(probe, x.Value)}: {x.Words}");
+        var place = probe.Words(bench.Board.Reference);
         var isOhms = probe.Quantity == ReadingQuantity.Resistance;
-        var condition = isOhms || bench.Board.Conditions.Count(c => !c.SuppliesRemoved && !c.IsSmallSignal) > 1 ? $" ({probe.Condition})" : "";
+        var condition = isOhms || probe.IsSmallSignal || bench.Board.Conditions.Count(c => !c.SuppliesRemoved && !c.IsSmallSignal) > 1 ? $" ({probe.Condition})" : "";
         var caution = isOhms
             ? "Supplies off and removed, capacitors discharged first."
-            : predictions.Any(x => Cautions.IsHazardous(x.Value)) ? $"Hazardous voltage: above {Cautions.HazardousVoltsDc} V may stand here." : null;
+            : probe.Quantity == ReadingQuantity.Voltage && predictions.Any(x => Cautions.IsHazardous(x.Value)) ? $"Hazardous voltage: above {Cautions.HazardousVoltsDc} V may stand here." : null;
         return new NextReading(
             probe.Condition, probe.Quantity, probe.At, probe.Against, bits, [.. leaders.Select(x => new Expectation(x.Group, x.Value, x.Sigma))], caution,
             $"{place}{condition} {string.Join("; ", shown)}");
+    }
+
+    private static string Shown(Probe probe, double value)
+    {
+        var unit = probe.Quantity.Unit();
+        return value >= Top(probe) ? $"above {EngineeringNotation.Format(value, unit, 3)}" : $"near {EngineeringNotation.Format(value, unit, 3)}";
     }
 
     /// <summary>What the meter may show, likeliest first, with the faults that would make it so; values that it could not tell apart are one.</summary>

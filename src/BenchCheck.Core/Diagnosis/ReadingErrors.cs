@@ -45,7 +45,7 @@ internal sealed class ReadingErrors(IReadOnlyList<Probe> probes, IReadOnlyList<i
             var likeliest = slips.MaxBy(s => s.Share * s.Density);
             var chiSquared = evidence.ChiSquared - (measured[i] - expected) * (measured[i] - expected) / altered[i];
             found.Add(new Fault(
-                [Name(i, likeliest.Words)], [rate], new Evidence(chiSquared, others + Math.Log(density), evidence.Converged), healthy, fit.Phi.ToArray(), altered,
+                [Name(i, likeliest.Words, healthy.Board.Reference)], [rate], new Evidence(chiSquared, others + Math.Log(density), evidence.Converged), healthy, fit.Phi.ToArray(), altered,
                 fit.Predicted.ToArray())
             {
                 WrongReading = i,
@@ -55,12 +55,11 @@ internal sealed class ReadingErrors(IReadOnlyList<Probe> probes, IReadOnlyList<i
         return found;
     }
 
-    private NamedFault Name(int i, string words)
+    private NamedFault Name(int i, string words, string reference)
     {
         var probe = probes[i];
-        var place = probe.Against is null ? probe.At : $"{probe.At} against {probe.Against}";
         return new NamedFault(
-            FaultKind.ReadingError, [], [], [], lines[i] > 0 ? [lines[i]] : [], null, null, null, $"reading at {place} ({probe.Condition}) {words}");
+            FaultKind.ReadingError, [], [], [], lines[i] > 0 ? [lines[i]] : [], null, null, null, $"reading at {probe.Words(reference)} ({probe.Condition}) {words}");
     }
 
     private List<Slip> Slips(double[] measured, int i, double expected, double spread, double breadth, ReadOnlySpan<double> explained)
@@ -78,7 +77,7 @@ internal sealed class ReadingErrors(IReadOnlyList<Probe> probes, IReadOnlyList<i
             slips.Add(new("has two digits exchanged", 0.15 / exchanged.Length, Math.Exp(LogNormal(other, expected, spread))));
 
         var neighbours = Enumerable.Range(0, measured.Length)
-            .Where(k => k != i && probes[k].Quantity == probes[i].Quantity && probes[k].Condition == probes[i].Condition && probes[k].Against == probes[i].Against).ToArray();
+            .Where(k => k != i && probes[k].IsLike(probes[i]) && probes[k].Condition == probes[i].Condition && probes[k].Against == probes[i].Against).ToArray();
         foreach (var k in neighbours)
         {
             var tolerance = spread + 1e-6 * explained[k] * explained[k];
@@ -107,7 +106,7 @@ internal sealed class ReadingErrors(IReadOnlyList<Probe> probes, IReadOnlyList<i
     /// <summary>How far off a wrong reading may be: as large as anything read of its kind.</summary>
     private double Breadth(double[] measured, int i)
     {
-        var largest = Enumerable.Range(0, measured.Length).Where(k => probes[k].Quantity == probes[i].Quantity).Max(k => Math.Abs(measured[k]));
+        var largest = Enumerable.Range(0, measured.Length).Where(k => probes[k].IsLike(probes[i])).Max(k => Math.Abs(measured[k]));
         return Math.Max(2 * largest, probes[i].Quantity.Unit() == Unit.Volt ? 2 : 1e-6);
     }
 

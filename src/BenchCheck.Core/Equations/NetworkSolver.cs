@@ -188,18 +188,20 @@ public sealed class NetworkSolver
         Accumulate(lambda.AsSpan(0, n), x.AsSpan(0, n), z, 1, gradient);
     }
 
-    /// <summary>Resistance between an unknown and the reference on the network last solved, every port at its slope.</summary>
-    public double TheveninOhms(int unknown)
+    /// <summary>Resistance between two unknowns on the network last solved, sources dead, every port at its slope.</summary>
+    /// <param name="low">−1 for the reference</param>
+    public double TheveninOhms(int high, int low = -1)
     {
         for (var k = 0; k < ports; k++)
         {
             ref readonly var port = ref network.Ports[k];
-            yielding[k] = isLive[k] ? Inverse(port.High, unknown) - Inverse(port.Low, unknown) : 0;
-            seen[k] = response[k * n + unknown];
+            yielding[k] = isLive[k] ? Inverse(port.High, high) - Inverse(port.Low, high) - Inverse(port.High, low) + Inverse(port.Low, low) : 0;
+            seen[k] = Across(response.AsSpan(k * n, n), high, low);
         }
 
         if (ports > 0) LuFactor.Solve(tangent, ports, tangentPivot, yielding.AsSpan(0, ports));
-        return Inverse(unknown, unknown) - LuFactor.Dot(seen.AsSpan(0, ports), yielding.AsSpan(0, ports));
+        var open = Inverse(high, high) - Inverse(high, low) - Inverse(low, high) + Inverse(low, low);
+        return open - LuFactor.Dot(seen.AsSpan(0, ports), yielding.AsSpan(0, ports));
     }
 
     /// <summary>True when the meter's current moves no device off its tangent, or over a corner, by more than a hair.</summary>

@@ -21,6 +21,7 @@ public sealed class BoardModel
 
     private readonly NetworkSolver solver;
     private readonly ReadingSetup[] setups;
+    private readonly double[] nominal;
     private readonly double[] theta;
     private readonly double[] gradient;
     private readonly int[] scaleOfReading;
@@ -43,7 +44,8 @@ public sealed class BoardModel
         Board = board;
         this.solver = solver;
         Table = new ParameterTable(board);
-        theta = [.. Table.Entries.Select(e => e.Nominal.IsUnknown ? FitParameter.StartOf(e.Kind) : e.Nominal.Value)];
+        nominal = [.. Table.Entries.Select(e => e.Nominal.IsUnknown ? FitParameter.StartOf(e.Kind) : e.Nominal.Value)];
+        theta = [.. nominal];
         gradient = new double[Table.Count];
         ReadingCount = probes.Count;
 
@@ -154,6 +156,19 @@ public sealed class BoardModel
         return OperatingPoint.Of(network, solver, theta);
     }
 
+    /// <summary>What the board is to whatever is connected between two nodes: its open voltage and the resistance looking in, sources dead.</summary>
+    /// <param name="condition">a DC condition</param>
+    public (double Volts, double Ohms) LookingIn(ReadOnlySpan<double> phi, Condition condition, string at, string against)
+    {
+        Load(phi);
+        Apply(condition.Name, phi);
+        var network = NetworkCompiler.Compile(Board, Table, condition);
+        solver.Solve(network, theta);
+        var (high, low) = (network.IndexOf(at), network.IndexOf(against));
+        double Volts(int node) => node < 0 ? 0 : solver.Unknowns[node];
+        return (Volts(high) - Volts(low), solver.TheveninOhms(high, low));
+    }
+
     /// <summary>Forgets the remembered operating states, so that the next prediction does not depend on those before it.</summary>
     public void Forget()
     {
@@ -162,6 +177,8 @@ public sealed class BoardModel
 
     private void Load(ReadOnlySpan<double> phi)
     {
+        // A drift may have moved what the fit does not.
+        nominal.CopyTo(theta, 0);
         for (var i = 0; i < BoardParameterCount; i++)
         {
             var parameter = fitted[i];

@@ -2,6 +2,7 @@ using System.Text;
 using System.Text.Encodings.Web;
 using System.Text.Json;
 using BenchCheck.Core.Checking;
+using BenchCheck.Core.Metering;
 
 namespace BenchCheck.Files;
 
@@ -26,13 +27,28 @@ public static class PredictionJson
                 Number(json, "bandLow", n.BandLow);
                 Number(json, "bandHigh", n.BandHigh);
                 Number(json, "resistance", n.TheveninOhms);
-                Array(json, "influences", n.Influences, i =>
-                {
-                    json.WriteString("part", i.Part);
-                    json.WriteString("parameter", i.Parameter.Name);
-                    Number(json, "share", i.Share);
-                    Number(json, "slope", i.PerUnit);
-                });
+                Influences(json, n.Influences);
+            });
+            Array(json, "signals", prediction.Signals.Where(s => Wanted(s.Condition)), s =>
+            {
+                json.WriteString("condition", s.Condition);
+                json.WriteString("quantity", s.Quantity.Name());
+                json.WriteString("at", s.At);
+                json.WriteString("against", s.Against);
+                json.WriteString("unit", s.Quantity.Unit().Symbol);
+                Number(json, "predicted", s.Value);
+                Number(json, "bandLow", s.BandLow);
+                Number(json, "bandHigh", s.BandHigh);
+                Influences(json, s.Influences);
+            });
+            Array(json, "lookingIn", prediction.LookingIn.Where(l => Wanted(l.Condition)), l =>
+            {
+                json.WriteString("condition", l.Condition);
+                json.WriteString("at", l.At);
+                json.WriteString("against", l.Against);
+                Number(json, "openVoltage", l.Volts ?? double.NaN);
+                Number(json, "resistance", l.Ohms);
+                Number(json, "shortCurrent", l.ShortAmperes ?? double.NaN);
             });
             Array(json, "currents", prediction.Currents.Where(c => Wanted(c.Condition)), c =>
             {
@@ -63,6 +79,14 @@ public static class PredictionJson
 
         bool Wanted(string name) => condition is null || name == condition;
     }
+
+    private static void Influences(Utf8JsonWriter json, IEnumerable<Influence> influences) => Array(json, "influences", influences, i =>
+    {
+        json.WriteString("part", i.Part);
+        json.WriteString("parameter", i.Parameter.Name);
+        Number(json, "share", i.Share);
+        Number(json, "slope", i.PerUnit);
+    });
 
     private static void Array<T>(Utf8JsonWriter json, string name, IEnumerable<T> items, Action<T> write)
     {

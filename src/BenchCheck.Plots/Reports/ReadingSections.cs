@@ -27,7 +27,7 @@ internal static class ReadingSections
                 object[] where = hasConditions ? [Html.Name(r.Reading.Condition)] : [];
                 return (object[])
                 [
-                    Html.Name(Words.Place(r.Reading, result.Reference)), .. where,
+                    Html.Name(r.Reading.Words(result.Reference)), .. where,
                     Html.Of("span", Html.Class(Words.Of(r.Verdict)), Html.MarkOf(Words.Of(r.Verdict)), Words.Of(r.Verdict)),
                     EngineeringNotation.FormatWithUncertainty(r.Reading.Value, r.StandardUncertainty, unit), Words.Value(r.Predicted, unit),
                     EngineeringNotation.Range(r.BandLow, r.BandHigh, unit, 4), Words.Signed(r.Difference, unit), Words.Ratio(r.En), Words.Value(r.Fitted, unit),

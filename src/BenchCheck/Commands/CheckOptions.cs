@@ -35,6 +35,11 @@ internal sealed class CheckOptions
         Description = "Seed of the Monte Carlo draws.", DefaultValueFactory = _ => 1, HelpName = "N",
     };
 
+    private readonly Option<int> draws = new("--draws")
+    {
+        Description = "How many boards a Monte Carlo band draws.", DefaultValueFactory = _ => CheckSettings.Default.Draws, HelpName = "N",
+    };
+
     private readonly Option<string?> rates = new("--rates")
     {
         Description = "Your own fault rates: lines \"kind,new build,service\"; kinds left out keep the usual rate.", HelpName = "FILE",
@@ -48,10 +53,15 @@ internal sealed class CheckOptions
         {
             if (result.GetValueOrDefault<double>() is not (>= 50 and <= 99.99)) result.AddError("--confidence takes a percentage from 50 to 99.99");
         });
+        draws.Validators.Add(result =>
+        {
+            if (result.GetValueOrDefault<int>() is not (>= 100 and <= 10_000_000)) result.AddError("--draws takes a number from 100 to 10000000");
+        });
         command.Add(confidence);
         command.Add(bands);
         command.Add(law);
         command.Add(seed);
+        command.Add(draws);
         command.Add(rates);
     }
 
@@ -61,6 +71,7 @@ internal sealed class CheckOptions
         Bands = parsed.GetValue(bands) switch { MonteCarlo => BandMethod.MonteCarlo, WorstCase => BandMethod.WorstCase, _ => BandMethod.FirstOrder },
         Law = parsed.GetValue(law) == ConstantDrop ? JunctionLaw.ConstantDrop : JunctionLaw.Exponential,
         Seed = parsed.GetValue(seed),
+        Draws = parsed.GetValue(draws),
     };
 
     /// <summary>The file of fault rates; null when the usual rates are meant.</summary>

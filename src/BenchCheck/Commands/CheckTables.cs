@@ -156,10 +156,7 @@ internal sealed class CheckTables(IAnsiConsole console, CheckResult result, bool
             Layout.Entry(console, "·", caution, caution.StartsWith("HAZARD", StringComparison.Ordinal) ? Bad : Plain);
     }
 
-    private string Place(Reading reading) =>
-        reading.Quantity == ReadingQuantity.Current ? $"{reading.At} current"
-        : reading.Against is null || result.Reference == reading.Against ? reading.At
-        : $"{reading.At} to {reading.Against}";
+    private string Place(Reading reading) => reading.Words(result.Reference);
 
     private static string Listed(Estimate e) => double.IsNaN(e.Nominal) ? "?" : EngineeringNotation.Range(e.NominalLow, e.NominalHigh, e.Kind.Unit);
 

@@ -16,7 +16,8 @@ internal static class TwoPinFaults
         foreach (var part in board.Parts)
         {
             if (part.Kind.Pins.Length != 2 || part is Supply or CurrentSource or ControlledSource) continue;
-            if (part is not (Capacitor or Switch { IsClosed: false }))
+            // An open capacitor shows only to small signals.
+            if (part is not Switch { IsClosed: false } && (part is not Capacitor || board.Conditions.Any(c => c.IsSmallSignal)))
                 yield return new FaultHypothesis(OpenNames(part), Alteration.OpenPin(board, part, 0));
             switch (part)
             {
@@ -36,7 +37,8 @@ internal static class TwoPinFaults
                     }
 
                     break;
-                case Capacitor:
+                case Capacitor capacitor:
+                    if (!capacitor.Farads.IsUnknown && board.Conditions.Any(c => c.Hertz is not null)) yield return WrongCapacitance(board, capacitor);
                     var leak = new Resistor(Alteration.NewName(board, $"leak {part.Designator}"), part.Nodes, Nominal.Between(30, 3e6));
                     yield return new FaultHypothesis(
                         new FaultName(FaultKind.Leaky, $"{part.Designator} leaky") { Parts = [part.Designator] },
@@ -81,6 +83,16 @@ internal static class TwoPinFaults
         return new FaultHypothesis(
             new FaultName(FaultKind.WrongValue, $"{r.Designator} of another value") { Parts = [r.Designator] },
             board.With([other], []), new FreeNumber(r.Designator, ParameterKind.Resistance, ohms));
+    }
+
+    /// <summary>Dried out, or another part: it has lost up to all but a thousandth, or holds up to twenty times as much.</summary>
+    private static FaultHypothesis WrongCapacitance(Board board, Capacitor c)
+    {
+        var farads = c.Farads.Value;
+        return new FaultHypothesis(
+            new FaultName(FaultKind.WrongValue, $"{c.Designator} of another capacitance") { Parts = [c.Designator] },
+            board.With([c with { Farads = Nominal.Between(farads / 1000, farads * WrongValueSpan) }], []),
+            new FreeNumber(c.Designator, ParameterKind.Capacitance, farads));
     }
 
     private static Board Toggled(Board board, Switch part)

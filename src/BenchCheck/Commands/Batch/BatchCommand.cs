@@ -57,7 +57,7 @@ internal static class BatchCommand
             }
 
             var settings = options.Settings(parsed) with { FindFaults = !parsed.GetValue(noSuspects) };
-            var progress = new BatchProgress(terminal.Error, ReferenceEquals(terminal.Error, Console.Error) && !Console.IsErrorRedirected, source.BoardCount);
+            var progress = ProgressLine.On(terminal, source.BoardCount, "boards");
             var wasStopped = !Check(new BatchRun(bench, settings, rates, Environment.ProcessorCount), boards, output, summary, progress, cancel);
             if (wasStopped)
                 terminal.Error.WriteLine($"Stopped after {summary.Boards} of {source.BoardCount} boards; their results are complete" + (output is null ? "." : ", and --resume goes on from there."));
@@ -66,7 +66,7 @@ internal static class BatchCommand
                 : summary.Agreeing == summary.Boards && source is { Unusable: 0, HasBadRows: false } ? ExitCode.Agrees : ExitCode.Disagrees;
         }
 
-        bool Check(BatchRun run, IEnumerable<ReadingSet> boards, BatchOutput? output, BatchSummary summary, BatchProgress progress, CancellationToken cancel)
+        bool Check(BatchRun run, IEnumerable<ReadingSet> boards, BatchOutput? output, BatchSummary summary, ProgressLine progress, CancellationToken cancel)
         {
             try
             {
