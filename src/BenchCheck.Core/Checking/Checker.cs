@@ -23,7 +23,7 @@ internal static class Checker
         var results = ReadingResults(readings, plan, fit, settings);
         var estimates = Estimates.Of(fit, settings.Confidence);
         var conditions = RestConditions(bench.Board, plan);
-        var points = conditions.Select(c => model.Operate(fit.Phi, c)).ToArray();
+        var points = conditions.Select(c => AtRest(model, fit, c)).ToArray();
         var (volts, place) = Highest(bench.Board, points, readings);
         var result = new CheckResult
         {
@@ -55,6 +55,19 @@ internal static class Checker
             Remarks = fit.Summary.Converged ? [] : [$"The fit stopped before it stood still ({fit.Summary}): read the estimates with care."],
         };
         return (result, fit);
+    }
+
+    /// <summary>The board as fitted; as listed where readings that contradict it have led the fit to values at which it has no state.</summary>
+    private static OperatingPoint AtRest(BoardModel model, BoardFit fit, Condition condition)
+    {
+        try
+        {
+            return model.Operate(fit.Phi, condition);
+        }
+        catch (NoOperatingStateException)
+        {
+            return model.Operate(fit.Start, condition);
+        }
     }
 
     /// <summary>The DC conditions that were read, at rest or with small signals on top.</summary>
@@ -103,8 +116,16 @@ internal static class Checker
         var model = BoardModel.AtPlaces(bench.Board, places, fit.Model.Solver);
         var p = model.Parameters.Length;
         var (predicted, fitted, jacobian) = (new double[places.Length], new double[places.Length], new double[places.Length * p]);
-        model.Predict(fit.Phi.AsSpan(0, p), fitted, []);
         model.Predict(fit.Start.AsSpan(0, p), predicted, jacobian);
+        try
+        {
+            model.Predict(fit.Phi.AsSpan(0, p), fitted, []);
+        }
+        catch (NoOperatingStateException)
+        {
+            predicted.CopyTo(fitted, 0);
+        }
+
         var bands = PredictedBand.Of(model, fit.Start.AsSpan(0, p), predicted, jacobian, settings);
         return [.. places.Select((place, i) => new UnmeasuredNode(place.Condition, place.At, predicted[i], bands[i].Low, bands[i].High, fitted[i]))];
     }
@@ -125,7 +146,7 @@ internal static class Checker
         {
             BoardVerdict.Agrees => $"The readings are what a healthy board may show (chance of worse: {chance}).",
             BoardVerdict.Undecided => $"The readings are at the edge of what a healthy board shows (chance of worse: {chance}).",
-            _ when outside > 0 => $"{outside} of {results.Length} readings are out of tolerance (chance on a healthy board: {chance}).",
+            _ when outside > 0 => $"{outside} of {results.Length} readings {(outside == 1 ? "is" : "are")} out of tolerance (chance on a healthy board: {chance}).",
             _ => $"No reading alone is out of tolerance, but together they do not fit a healthy board (chance: {chance}).",
         };
     }

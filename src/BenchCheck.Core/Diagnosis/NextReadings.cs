@@ -22,7 +22,7 @@ internal sealed class NextReadings(Bench bench, ReadingPlan plan, EvidenceFit fi
     private const double LeastProbability = 2e-4;
 
     /// <summary>Below this many bits a reading is not worth the lead.</summary>
-    private const double LeastBits = 0.01;
+    private const double LeastBits = 0.02;
 
     private const int MostReadings = 8;
 

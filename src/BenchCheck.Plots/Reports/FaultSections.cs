@@ -29,7 +29,7 @@ internal static class FaultSections
         suspect.Alike.Length <= AlikeInText ? null : Html.Of("p", Html.Class("small"), "All that look the same from here: " + string.Join("; ", suspect.Alike.Select(a => Html.Text(a.Text))) + "."));
 
     private static XElement Next(NextReading next, CheckResult result) => Html.Of("li",
-        Html.Of("span", Html.Class("chance"), string.Create(CultureInfo.InvariantCulture, $"{next.Bits:0.0} bits")), " " + Html.Text(next.Text),
+        Html.Of("span", Html.Class("chance"), string.Create(CultureInfo.InvariantCulture, $"{next.Bits:0.00} bits")), " " + Html.Text(next.Text),
         next.Caution is { } caution ? Html.Of("p", Html.Class("small doubtful"), Html.Text(caution)) : null,
         next.Expect.Length < 2 ? null : Html.Of("p", Html.Class("small"), "It would show: " + string.Join("; ", next.Expect.Select(e => Expected(e, next, result))) + "."));
 

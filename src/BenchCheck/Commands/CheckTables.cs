@@ -44,7 +44,7 @@ internal sealed class CheckTables(IAnsiConsole console, CheckResult result, bool
         foreach (var next in result.Next.Take(MostNext))
         {
             var caution = next.Caution is null ? "" : $" [{next.Caution}]";
-            Layout.Entry(console, next.Bits.ToString("0.0", CultureInfo.InvariantCulture) + " bits", next.Text + caution);
+            Layout.Entry(console, next.Bits.ToString("0.00", CultureInfo.InvariantCulture) + " bits", next.Text + caution);
         }
     }
 

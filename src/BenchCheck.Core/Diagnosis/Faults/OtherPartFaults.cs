@@ -18,7 +18,7 @@ internal static class OtherPartFaults
             }
 
             yield return new FaultHypothesis(
-                new FaultName(FaultKind.PinsExchanged, $"{pot.Designator} with its ends exchanged") { Parts = [pot.Designator] },
+                new FaultName(FaultKind.PinsExchanged, $"{pot.Designator} with its ends exchanged") { Parts = [pot.Designator], Pins = [pot.JointName(0), pot.JointName(2)] },
                 board.With([Alteration.Exchange(pot, 0, 2)], []));
             if (pot.Ohms.IsUnknown) continue;
             yield return new FaultHypothesis(
@@ -39,7 +39,7 @@ internal static class OtherPartFaults
             }
 
             yield return new FaultHypothesis(
-                new FaultName(FaultKind.PinsExchanged, $"{amp.Designator} with its inputs exchanged") { Parts = [amp.Designator] },
+                new FaultName(FaultKind.PinsExchanged, $"{amp.Designator} with its inputs exchanged") { Parts = [amp.Designator], Pins = [amp.JointName(0), amp.JointName(1)] },
                 board.With([Alteration.Exchange(amp, 0, 1)], []));
         }
     }

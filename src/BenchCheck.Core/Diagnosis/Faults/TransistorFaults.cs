@@ -24,7 +24,7 @@ internal static class TransistorFaults
             foreach (var (pin, other) in new[] { (Transistor.Collector, Transistor.Emitter), (Transistor.Base, Transistor.Emitter), (Transistor.Collector, Transistor.Base) })
             {
                 yield return new FaultHypothesis(
-                    Name(FaultKind.PinsExchanged, $"{q.Designator} with {q.Kind.Pins[pin]} and {q.Kind.Pins[other]} exchanged", q),
+                    Name(FaultKind.PinsExchanged, $"{q.Designator} with {q.Kind.Pins[pin]} and {q.Kind.Pins[other]} exchanged", q) with { Pins = [q.JointName(pin), q.JointName(other)] },
                     board.With([Alteration.Exchange(q, pin, other)], []));
             }
 
