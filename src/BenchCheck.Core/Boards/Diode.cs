@@ -27,8 +27,8 @@ public sealed record Diode(PartKind Kind, string Designator, ImmutableArray<stri
     private static readonly Nominal UsualLedSeriesOhms = Nominal.Between(1, 12);
     private static readonly Nominal UsualKnee = Nominal.Between(0.8, 3.2);
 
-    /// <summary>Current at which a zener's voltage is stated: common practice, no source.</summary>
-    private const double ZenerTestAmperes = 5e-3;
+    /// <summary>Current at which a zener's breakdown is stated; where none is, 5 mA: common practice, no source.</summary>
+    public double BreakdownAmperes { get; init; } = 5e-3;
 
     /// <summary>Current at which the forward voltage is stated: 1 mA for a silicon junction, 5 mA for an LED.</summary>
     public double ReferenceAmperes { get; init; } = ReferenceEquals(Kind, Led) ? 5e-3 : 1e-3;
@@ -51,6 +51,6 @@ public sealed record Diode(PartKind Kind, string Designator, ImmutableArray<stri
         var one = Coefficient.Constant(1);
         elements.Add(new Junction(0, 1, Coefficient.Of(0), default, one, -1, -1, ReferenceAmperes, Coefficient.Of(1), Coefficient.Of(2), JunctionRole.Forward));
         if (Breakdown is not null)
-            elements.Add(new Junction(1, 0, Coefficient.Of(3), default, one, -1, -1, ZenerTestAmperes, Coefficient.Of(4), Coefficient.Of(2), JunctionRole.Breakdown));
+            elements.Add(new Junction(1, 0, Coefficient.Of(3), default, one, -1, -1, BreakdownAmperes, Coefficient.Of(4), Coefficient.Of(2), JunctionRole.Breakdown));
     }
 }

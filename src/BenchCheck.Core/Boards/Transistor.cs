@@ -39,7 +39,12 @@ public sealed record Transistor(PartKind Kind, string Designator, ImmutableArray
     /// <summary>Emitter lead, and base resistance over the gain, as the collector current meets them: common practice, no source.</summary>
     private static readonly Nominal UsualSeriesOhms = Nominal.Between(0.1, 2);
 
-    public double ReferenceAmperes { get; init; } = 1e-3;
+    /// <summary>Collector current at which gain and drop are stated; null when none is, which then means 1 mA for the drop.</summary>
+    public double? StatedAmperes { get; init; }
+
+    public double ReferenceAmperes => StatedAmperes ?? UsualAmperes;
+
+    private const double UsualAmperes = 1e-3;
 
     /// <summary>Resistance between collector and emitter at the operating point, as small signals meet it; null when it is left out.</summary>
     public Nominal? OutputOhms { get; init; }

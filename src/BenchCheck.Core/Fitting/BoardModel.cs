@@ -16,6 +16,12 @@ public sealed class BoardModel
     /// <summary>Standard deviation of the logarithm of a gain between conditions: an Early voltage of about 80 V over some volts.</summary>
     private const double GainDrift = 0.06;
 
+    /// <summary>Standard deviation of the logarithm of a gain for each decade between its current and that at which it is stated: common practice, no source.</summary>
+    private const double GainSpreadPerDecade = 0.15;
+
+    /// <summary>Below this a transistor counts as off, and its gain as unseen.</summary>
+    private const double LeastCollectorAmperes = 1e-8;
+
     /// <summary>Standard deviation of a drop between conditions, volts.</summary>
     private const double DropDrift = 2.5e-3;
 
@@ -77,8 +83,9 @@ public sealed class BoardModel
         }
 
         if (driftingConditions.Length > 1) drifts = Drifts(driftingConditions, parameters);
-        Parameters = parameters.ToImmutable();
-        fitted = [.. Parameters];
+        fitted = [.. parameters];
+        WidenStatedGains();
+        Parameters = [.. fitted];
         setups = new ReadingArrangement(board, Table, probes, solver).Setups();
     }
 
@@ -183,6 +190,33 @@ public sealed class BoardModel
         {
             var parameter = fitted[i];
             theta[parameter.ThetaIndex] = parameter.Value(phi[i]);
+        }
+    }
+
+    /// <summary>
+    /// A gain stated at one current is less certain at another: what the parts list says of it is widened for the current that the board as
+    /// listed gives the transistor.
+    /// </summary>
+    private void WidenStatedGains()
+    {
+        var stated = Board.Parts.OfType<Transistor>().Where(q => q.StatedAmperes is not null).ToArray();
+        if (stated.Length == 0 || Board.Conditions.FirstOrDefault(c => c is { IsSmallSignal: false, SuppliesRemoved: false }) is not { } condition) return;
+        Dictionary<string, double> currents;
+        try
+        {
+            currents = Operate([.. fitted.Select(p => p.Mean)], condition).Currents().ToDictionary(c => c.At, c => Math.Abs(c.Amperes), StringComparer.Ordinal);
+        }
+        catch (NoOperatingStateException)
+        {
+            return;
+        }
+
+        foreach (var q in stated)
+        {
+            var index = Array.FindIndex(fitted, p => p.Owner == q.Designator && p.Kind == ParameterKind.Gain);
+            if (index < 0 || !(currents[q.JointName(Transistor.Collector)] > LeastCollectorAmperes)) continue;
+            var spread = GainSpreadPerDecade * Math.Log10(currents[q.JointName(Transistor.Collector)] / q.ReferenceAmperes);
+            fitted[index] = fitted[index] with { Sigma = Math.Sqrt(fitted[index].Sigma * fitted[index].Sigma + spread * spread) };
         }
     }
 

@@ -21,6 +21,7 @@ internal sealed record Limits(double Smallest, double Largest, Unit Unit, bool I
     public static readonly Limits OffsetVolts = new(-10, 10, Unit.Volt);
     public static readonly Limits Headroom = new(0, 100, Unit.Volt);
     public static readonly Limits Amperes = new(-1e3, 1e3, Unit.Ampere, false, "M is mega, m is milli");
+    public static readonly Limits StatedAmperes = new(1e-9, 1e3, Unit.Ampere, true, "the current at which the data sheet states gain, drop or breakdown");
     public static readonly Limits Farads = new(1e-15, 1e3, Unit.Farad, true, "capacitances are written as 10 uF, 4n7");
     public static readonly Limits Henries = new(1e-12, 1e5, Unit.Henry, true);
     public static readonly Limits TransistorGain = new(0.01, 1e6, Unit.One, true);

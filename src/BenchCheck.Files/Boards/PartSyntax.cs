@@ -88,9 +88,18 @@ internal sealed record PartSyntax(PartKind Kind, Func<PartReader, ImmutableArray
     private static Diode? MakeDiode(PartReader p, ImmutableArray<string> nodes, PartKind kind, Tolerance usual, Nominal usualDrop)
     {
         var drop = p.OrUsual("drop", Unit.Volt, usual, Limits.Drop, usualDrop);
-        if (!ReferenceEquals(kind, Diode.Zener)) return drop is null ? null : new Diode(kind, p.Designator, nodes, drop);
+        var at = p.Table.TakeNumber("at", Unit.Ampere, Limits.StatedAmperes);
+        if (!ReferenceEquals(kind, Diode.Zener))
+        {
+            if (drop is null) return null;
+            var diode = new Diode(kind, p.Designator, nodes, drop);
+            return at is { } forward ? diode with { ReferenceAmperes = forward } : diode;
+        }
+
         var breakdown = p.Required("breakdown", Unit.Volt, UsualTolerance.Breakdown, Limits.PositiveVolts);
-        return drop is null || breakdown is null ? null : new Diode(kind, p.Designator, nodes, drop, breakdown);
+        if (drop is null || breakdown is null) return null;
+        var zener = new Diode(kind, p.Designator, nodes, drop, breakdown);
+        return at is { } test ? zener with { BreakdownAmperes = test } : zener;
     }
 
     private static Transistor? MakeTransistor(PartReader p, ImmutableArray<string> nodes, PartKind kind)
@@ -100,7 +109,11 @@ internal sealed record PartSyntax(PartKind Kind, Func<PartReader, ImmutableArray
         var saturation = p.OrUsual("saturation", Unit.Volt, UsualTolerance.Saturation, Limits.Saturation, Transistor.UsualSaturation);
         var output = p.Optional("output_resistance", Unit.Ohm, UsualTolerance.OutputResistance, Limits.SeriesResistance);
         if (gain is null || drop is null || saturation is null || (output is null && p.Has("output_resistance"))) return null;
-        return new Transistor(kind, p.Designator, nodes, gain, drop, saturation) { OutputOhms = output };
+        return new Transistor(kind, p.Designator, nodes, gain, drop, saturation)
+        {
+            OutputOhms = output,
+            StatedAmperes = p.Table.TakeNumber("at", Unit.Ampere, Limits.StatedAmperes),
+        };
     }
 
     private static OpAmp? MakeOpAmp(PartReader p, ImmutableArray<string> nodes)

@@ -29,6 +29,21 @@ public class BoardFileTests
     }
 
     [Fact]
+    public void A_current_at_which_the_data_sheet_states_its_figures_is_read()
+    {
+        var result = Samples.WithParts("""
+            D1 = { kind = "led", drop = "2 V ± 0.1 V", at = "20 mA", pins = { anode = "E1", cathode = "GND" } }
+            Z1 = { kind = "zener", breakdown = "5.1 V 5%", at = "1 mA", pins = { anode = "GND", cathode = "C1" } }
+            Q2 = { kind = "npn", gain = "100..300", at = "2 mA", output_resistance = "50k", pins = { collector = "C1", base = "B1", emitter = "E1" } }
+            """);
+        var board = result.Bench!.Board;
+        Assert.Equal(20e-3, ((Diode)board.Find("D1")!).ReferenceAmperes);
+        Assert.Equal(1e-3, ((Diode)board.Find("Z1")!).BreakdownAmperes);
+        var q = (Transistor)board.Find("Q2")!;
+        Assert.Equal((2e-3, 50e3), (q.StatedAmperes, q.OutputOhms!.Value));
+    }
+
+    [Fact]
     public void Every_kind_of_part_is_read_with_its_keys()
     {
         var result = Samples.WithParts("""
