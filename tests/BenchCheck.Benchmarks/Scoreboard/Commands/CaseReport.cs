@@ -16,7 +16,7 @@ internal static class CaseReport
         output.WriteLine($"truth: {(truth.Faults.IsEmpty ? "healthy" : string.Join(" + ", truth.Faults))}; visibility {truth.Visibility:F1}");
         foreach (var part in truth.Faulty.Parts) output.WriteLine($"  {part}");
         var result = new Reconciliation(truth.Bench, CheckSettings.Default).Run(truth.Readings);
-        var score = new CaseScorer(new TruthSolver()).Score(KnownCase.Of(truth));
+        var score = new CaseScorer(new TruthSolver(), CheckSettings.Default).Score(KnownCase.Of(truth));
         var table = new Table("reading", "shown", "predicted", "u", "En", "verdict", "first suspect gives");
         for (var i = 0; i < result.Readings.Length; i++)
         {

@@ -11,7 +11,7 @@ using BenchCheck.Core.Metering;
 namespace BenchCheck.Benchmarks.Scoreboard.Scoring;
 
 /// <summary>Runs the program on a case and holds its result against the truth.</summary>
-public sealed class CaseScorer(TruthSolver solver)
+public sealed class CaseScorer(TruthSolver solver, CheckSettings settings)
 {
     /// <summary>Groups behind these are judged by their names only: no figure asks more of them.</summary>
     private const int JudgedByPhysics = 3;
@@ -22,7 +22,7 @@ public sealed class CaseScorer(TruthSolver solver)
         var clock = Stopwatch.StartNew();
         try
         {
-            var result = new Reconciliation(known.Bench, CheckSettings.Default).Run(known.Readings);
+            var result = new Reconciliation(known.Bench, settings).Run(known.Readings);
             clock.Stop();
             return new CaseScore(known, result.Verdict, null, clock.Elapsed, Groups(known, result), known.IsHealthy ? Intervals(known, result) : []);
         }
