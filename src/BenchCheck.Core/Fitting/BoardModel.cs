@@ -7,23 +7,16 @@ namespace BenchCheck.Core.Fitting;
 
 /// <summary>A board with the places where it is read: the prediction f(φ) of every reading and its Jacobian.</summary>
 /// <remarks>
-/// Readings of one meter, function and range share
-/// a scale error ε, so the meter shows (1 + ε) times what is there. Shapes: m readings, p fitted parameters; Jacobian m×p, row-major, in
-/// units of φ. Remembers the devices' last operating state as the start of the next search; not for use by two threads at once.
+/// Readings of one meter, function and range share a scale error ε, so the meter shows (1 + ε) times what is there. Shapes: m readings,
+/// p fitted parameters; Jacobian m×p, row-major, in units of φ. Remembers the devices' last operating state as the start of the next search; not for use by two threads at once.
 /// </remarks>
 public sealed class BoardModel
 {
-    /// <summary>Standard deviation of the logarithm of a gain between conditions: an Early voltage of about 80 V over some volts.</summary>
-    private const double GainDrift = 0.06;
-
     /// <summary>Standard deviation of the logarithm of a gain for each decade between its current and that at which it is stated: common practice, no source.</summary>
     private const double GainSpreadPerDecade = 0.15;
 
     /// <summary>Below this a transistor counts as off, and its gain as unseen.</summary>
     private const double LeastCollectorAmperes = 1e-8;
-
-    /// <summary>Standard deviation of a drop between conditions, volts.</summary>
-    private const double DropDrift = 2.5e-3;
 
     private readonly NetworkSolver solver;
     private readonly ReadingSetup[] setups;
@@ -32,65 +25,38 @@ public sealed class BoardModel
     private readonly double[] gradient;
     private readonly int[] scaleOfReading;
     private readonly FitParameter[] fitted;
-    private readonly Drift[] drifts = [];
+    private readonly ModelParameters.Drift[] drifts;
 
     /// <param name="probes">where the board is read; the order of predictions</param>
     /// <param name="hasScaleError">which readings carry the meter's scale error: those whose uncertainty was not stated</param>
     /// <param name="solver">shared workspace; any number of models may use one in turn</param>
     public BoardModel(Board board, IReadOnlyList<Probe> probes, IReadOnlyList<bool> hasScaleError, NetworkSolver solver)
-        : this(board, probes, hasScaleError, solver, Conditions(probes))
+        : this(board, new ParameterTable(board), probes, table => ModelParameters.OfReadings(board, table, probes, hasScaleError), solver)
     {
     }
 
-    private BoardModel(Board board, IReadOnlyList<Probe> probes, IReadOnlyList<bool> hasScaleError, NetworkSolver solver, string[] driftingConditions)
+    private BoardModel(Board board, ParameterTable table, IReadOnlyList<Probe> probes, Func<ParameterTable, ModelParameters> choose, NetworkSolver solver)
     {
-        ArgumentNullException.ThrowIfNull(board);
-        ArgumentNullException.ThrowIfNull(probes);
-        ArgumentNullException.ThrowIfNull(hasScaleError);
         Board = board;
+        Table = table;
         this.solver = solver;
-        Table = new ParameterTable(board);
-        nominal = [.. Table.Entries.Select(e => e.Nominal.IsUnknown ? FitParameter.StartOf(e.Kind) : e.Nominal.Value)];
+        nominal = [.. table.Entries.Select(e => e.Nominal.IsUnknown ? FitParameter.StartOf(e.Kind) : e.Nominal.Value)];
         theta = [.. nominal];
-        gradient = new double[Table.Count];
+        gradient = new double[table.Count];
         ReadingCount = probes.Count;
-
-        // What only small signals can tell is left out of boards that know none.
-        var hasFrequency = board.Conditions.Any(c => c.Hertz is not null);
-        var hasSmallSignal = board.Conditions.Any(c => c.IsSmallSignal);
-        var parameters = ImmutableArray.CreateBuilder<FitParameter>();
-        for (var i = 0; i < Table.Count; i++)
-        {
-            var kind = Table.Entries[i].Kind;
-            if (kind.IsReactive ? !hasFrequency : kind.IsSmallSignal && !hasSmallSignal) continue;
-            if (FitParameter.Of(Table.Entries[i], i) is { } parameter) parameters.Add(parameter);
-        }
-
-        BoardParameterCount = parameters.Count;
-        scaleOfReading = new int[probes.Count];
-        var groups = new Dictionary<(string, ReadingQuantity, double), int>();
-        for (var j = 0; j < probes.Count; j++)
-        {
-            scaleOfReading[j] = -1;
-            if (!hasScaleError[j] || probes[j].ScaleUncertainty == 0) continue;
-            if (!groups.TryGetValue(probes[j].ScaleGroup, out var index))
-            {
-                groups[probes[j].ScaleGroup] = index = parameters.Count;
-                parameters.Add(ScaleError(probes[j]));
-            }
-
-            scaleOfReading[j] = index;
-        }
-
-        if (driftingConditions.Length > 1) drifts = Drifts(driftingConditions, parameters);
-        fitted = [.. parameters];
+        var parameters = choose(table);
+        fitted = [.. parameters.All];
+        BoardParameterCount = parameters.BoardCount;
+        scaleOfReading = parameters.ScaleOfReading;
+        drifts = parameters.Drifts;
         WidenStatedGains();
         Parameters = [.. fitted];
-        setups = new ReadingArrangement(board, Table, probes, solver).Setups();
+        setups = new ReadingArrangement(board, table, probes, solver).Setups();
     }
 
     /// <summary>The board read where no reading was taken: no scale errors, no drift between conditions, only the board's own parameters.</summary>
-    public static BoardModel AtPlaces(Board board, IReadOnlyList<Probe> places, NetworkSolver solver) => new(board, places, new bool[places.Count], solver, []);
+    public static BoardModel AtPlaces(Board board, IReadOnlyList<Probe> places, NetworkSolver solver) =>
+        new(board, new ParameterTable(board), places, table => ModelParameters.OfBoard(board, table, places.Count), solver);
 
     internal NetworkSolver Solver => solver;
 
@@ -220,34 +186,6 @@ public sealed class BoardModel
         }
     }
 
-    private static string[] Conditions(IReadOnlyList<Probe> probes) =>
-        [.. probes.Where(p => p.Quantity != ReadingQuantity.Resistance).Select(p => p.Condition).Distinct(StringComparer.Ordinal)];
-
-    /// <summary>
-    /// What the transistor model leaves out when a board is read in several conditions: the gain and the drop of one transistor are not quite
-    /// the same in each, because the collector voltage (Early effect) and the warmth differ. Common practice, no source.
-    /// </summary>
-    private Drift[] Drifts(string[] conditions, ImmutableArray<FitParameter>.Builder parameters)
-    {
-        var result = new List<Drift>();
-        foreach (var part in Board.Parts.OfType<Transistor>())
-        {
-            foreach (var condition in conditions)
-            {
-                for (var k = 0; k < 2; k++)
-                {
-                    var kind = part.Parameters[k].Kind;
-                    var (isRatio, sigma) = kind == ParameterKind.Gain ? (true, GainDrift) : (false, DropDrift);
-                    result.Add(new Drift(condition, Table.IndexOf(part, k, condition), parameters.Count, isRatio));
-                    parameters.Add(new FitParameter(
-                        part.Designator, isRatio ? ParameterKind.GainDrift : ParameterKind.Offset, condition, Quantities.Nominal.Exactly(0), -1, false, 0, sigma));
-                }
-            }
-        }
-
-        return [.. result];
-    }
-
     private void Apply(string condition, ReadOnlySpan<double> phi)
     {
         if (drifts.Length == 0) return;
@@ -259,11 +197,4 @@ public sealed class BoardModel
             else theta[drift.ThetaIndex] += phi[drift.Parameter];
         }
     }
-
-    private static FitParameter ScaleError(Probe probe) => new(
-        probe.ScaleGroupName, ParameterKind.ScaleError, null,
-        Quantities.Nominal.Within(0, Quantities.Tolerance.Absolute(probe.Function.ReadingFraction)), -1, false, 0, probe.ScaleUncertainty);
-
-    /// <summary>A parameter that is a little different in one condition.</summary>
-    private readonly record struct Drift(string Condition, int ThetaIndex, int Parameter, bool IsRatio);
 }
