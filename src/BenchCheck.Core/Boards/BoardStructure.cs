@@ -118,8 +118,8 @@ public static class BoardStructure
             any.TieAll(part.Nodes);
             if (part is Capacitor) continue;
 
-            // The inputs of an op-amp draw no current, so they tie their nodes to nothing.
-            var carrying = part is OpAmp ? part.Nodes.RemoveRange(0, 2) : part.Nodes;
+            // The inputs of an op-amp and a gate draw no current, so they tie their nodes to nothing.
+            var carrying = part is OpAmp ? part.Nodes.RemoveRange(0, 2) : part is Mosfet ? part.Nodes.RemoveAt(Mosfet.Gate) : part.Nodes;
             direct.TieAll(carrying);
             if (part is not CurrentSource) stiff.TieAll(carrying);
         }

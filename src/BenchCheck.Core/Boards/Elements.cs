@@ -23,7 +23,7 @@ public sealed record VoltageBranch(int Plus, int Minus, Coefficient Emf, Coeffic
 public sealed record CurrentBranch(int From, int To, Coefficient Amperes, Control? Control = null, Coefficient Gain = default, bool IsSupply = false);
 
 /// <summary>
-/// A semiconductor junction with the current that it controls. With z ≥ 0 the controlling current, v the voltage from anode to cathode:
+/// A junction, or another one-way branch of that kind, with the current that it controls. With z ≥ 0 the controlling current, v the voltage from anode to cathode:
 /// constant-drop law v = drop while z &gt; 0; junction law v = drop + n·V_T·ln(z / reference) (Shockley); either with a resistance in series.
 /// z / gain flows from anode to cathode (z itself when <paramref name="Gain"/> is the constant one), and z flows from
 /// <paramref name="TransportFrom"/> to <paramref name="TransportTo"/> when these are pins.
@@ -32,12 +32,16 @@ public sealed record CurrentBranch(int From, int To, Coefficient Amperes, Contro
 /// <param name="Excess">a second voltage added to the drop (what a saturation voltage holds beyond its junctions); constant zero for none</param>
 /// <param name="Gain">z over the current through the junction itself</param>
 /// <param name="ReferenceAmperes">the current z at which the drop is stated</param>
-/// <param name="Ideality">emission coefficient n; for a breakdown the softness of its knee, likewise in thermal voltages a factor e</param>
+/// <param name="Ideality">emission coefficient n, constant zero for a branch that keeps its drop at any current; for a breakdown the softness of its knee, likewise in thermal voltages a factor e</param>
 /// <param name="SeriesOhms">resistance that z drops its own voltage across, beside the law</param>
 /// <param name="Role">what its conduction means for the state of the part</param>
 public sealed record Junction(
     int Anode, int Cathode, Coefficient Drop, Coefficient Excess, Coefficient Gain, int TransportFrom, int TransportTo,
-    double ReferenceAmperes, Coefficient Ideality, Coefficient SeriesOhms, JunctionRole Role);
+    double ReferenceAmperes, Coefficient Ideality, Coefficient SeriesOhms, JunctionRole Role)
+{
+    /// <summary>Slope dz/dv to small signals while it conducts, where it is stated; constant zero for that of the law.</summary>
+    public Coefficient Siemens { get; init; }
+}
 
 /// <summary>What a conducting junction is to its part.</summary>
 public enum JunctionRole
@@ -53,6 +57,21 @@ public enum JunctionRole
 
     /// <summary>a transistor's base-collector junction: conducting together with the other one it means saturation</summary>
     BaseCollector,
+
+    /// <summary>a MOSFET's channel, opened by the gate against the source</summary>
+    Channel,
+
+    /// <summary>the same against the drain: together with the other one the switch is closed</summary>
+    ReverseChannel,
+
+    /// <summary>a regulator held at its stated voltage</summary>
+    Reference,
+
+    /// <summary>a regulator held below its input</summary>
+    DropOut,
+
+    /// <summary>a regulator's output stage</summary>
+    Delivery,
 }
 
 /// <summary>

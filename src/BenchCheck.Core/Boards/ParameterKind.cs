@@ -44,6 +44,15 @@ public sealed record ParameterKind(string Name, Unit Unit, bool IsRatioScale, bo
     /// <summary>Offset voltage of an op-amp's input; what remains of a saturation voltage beyond its junctions.</summary>
     public static readonly ParameterKind Offset = new("offset", Unit.Volt, false, false);
 
+    /// <summary>Gate-source voltage at which a MOSFET begins to conduct.</summary>
+    public static readonly ParameterKind Threshold = new("threshold", Unit.Volt, false);
+
+    /// <summary>Least voltage that a regulator keeps between its input and its output.</summary>
+    public static readonly ParameterKind DropOut = new("drop-out", Unit.Volt, true, false);
+
+    /// <summary>Current that a regulator draws for itself.</summary>
+    public static readonly ParameterKind IdleCurrent = new("idle current", Unit.Ampere, true, false);
+
     /// <summary>True for a number that only readings at a stated frequency can tell.</summary>
     public bool IsReactive => ReferenceEquals(this, Capacitance) || ReferenceEquals(this, Inductance);
 

@@ -22,6 +22,12 @@ public sealed class PartElements
     public IReadOnlyList<Limit> Limits => limits;
     public IReadOnlyList<Reactance> Reactances => reactances;
 
+    /// <summary>How many nodes the part has inside.</summary>
+    public int InnerNodes { get; private set; }
+
+    /// <summary>A node inside the part; its number goes on from those of the pins.</summary>
+    public int AddInnerNode(int pins) => pins + InnerNodes++;
+
     public void Add(Conductor element) => conductors.Add(element);
     public void Add(VoltageBranch element) => voltageBranches.Add(element);
     public void Add(AmplifierBranch element) => amplifiers.Add(element);

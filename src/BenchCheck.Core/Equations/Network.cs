@@ -43,7 +43,14 @@ public sealed class Network
     /// <summary>A junction (Row −1) or a limit (Row: the branch row that z overrides, with sign RowSign).</summary>
     internal readonly record struct CompiledPort(
         int High, int Low, Coefficient Drop, Coefficient Excess, Coefficient Gain, int TransportFrom, int TransportTo,
-        double ReferenceAmperes, Coefficient Ideality, Coefficient SeriesOhms, JunctionRole? Role, int Row, double RowSign, int Part);
+        double ReferenceAmperes, Coefficient Ideality, Coefficient SeriesOhms, JunctionRole? Role, int Row, double RowSign, int Part)
+    {
+        /// <summary>Slope to small signals, where one is stated.</summary>
+        public Coefficient Siemens { get; init; }
+
+        /// <summary>True for a branch that keeps its drop at any current, whatever the law of the junctions.</summary>
+        public bool IsStraight => Ideality.IsConstantZero;
+    }
 
     /// <summary>An impedance with its own branch current at Row; only in networks for small signals.</summary>
     internal readonly record struct CompiledReactance(int From, int To, int Row, Coefficient Value, Coefficient Ohms, bool IsCapacitance, int Part);

@@ -56,6 +56,7 @@ public sealed class NetworkCompiler
         foreach (var node in board.Nodes) AddNode(node);
         foreach (var sensed in SensedParts()) Insert(sensed, 0);
         foreach (var ammeter in ammeters) Insert(ammeter.Part, ammeter.Pin);
+        var described = board.Parts.Select(Describe).ToArray();
         var nodeCount = nodeIndex.Count - 1;
 
         foreach (var (designator, pin) in insertedNode.Keys)
@@ -73,7 +74,7 @@ public sealed class NetworkCompiler
                 Network.ControlKind.None, -1, -1, default, -1));
         }
 
-        for (var i = 0; i < board.Parts.Length; i++) AddPart(board.Parts[i], i, nodeCount);
+        for (var i = 0; i < board.Parts.Length; i++) AddPart(board.Parts[i], described[i], i, nodeCount);
 
         return new Network(condition)
         {
@@ -108,13 +109,24 @@ public sealed class NetworkCompiler
         AddNode(node);
     }
 
-    private void AddPart(Part part, int partIndex, int nodeCount)
+    /// <summary>The elements of a part; its inner nodes become nodes of the network.</summary>
+    private PartElements Describe(Part part)
     {
         var elements = new PartElements();
         describe(part, elements, condition.Switches.GetValueOrDefault(part.Designator));
-        var pins = new int[part.Nodes.Length];
-        for (var pin = 0; pin < pins.Length; pin++)
+        for (var i = 0; i < elements.InnerNodes; i++) AddNode(InnerName(part, i));
+        return elements;
+    }
+
+    /// <summary>A name that no file can give, because of its spaces.</summary>
+    private static string InnerName(Part part, int i) => $"{part.Designator} inner {i}";
+
+    private void AddPart(Part part, PartElements elements, int partIndex, int nodeCount)
+    {
+        var pins = new int[part.Nodes.Length + elements.InnerNodes];
+        for (var pin = 0; pin < part.Nodes.Length; pin++)
             pins[pin] = nodeIndex[insertedNode.GetValueOrDefault((part.Designator, pin), part.Nodes[pin])];
+        for (var i = 0; i < elements.InnerNodes; i++) pins[part.Nodes.Length + i] = nodeIndex[InnerName(part, i)];
 
         Coefficient Map(Coefficient c) => c with
         {
@@ -155,7 +167,10 @@ public sealed class NetworkCompiler
             var hasTransport = e.TransportFrom >= 0;
             ports.Add(new(
                 Pin(e.Anode), Pin(e.Cathode), Map(e.Drop), Map(e.Excess), Map(e.Gain), hasTransport ? Pin(e.TransportFrom) : -1,
-                hasTransport ? Pin(e.TransportTo) : -1, e.ReferenceAmperes, Map(e.Ideality), Map(e.SeriesOhms), e.Role, -1, 0, partIndex));
+                hasTransport ? Pin(e.TransportTo) : -1, e.ReferenceAmperes, Map(e.Ideality), Map(e.SeriesOhms), e.Role, -1, 0, partIndex)
+            {
+                Siemens = Map(e.Siemens),
+            });
         }
 
         foreach (var e in elements.Limits)

@@ -89,7 +89,7 @@ public sealed class NetworkSolver
             ref readonly var port = ref net.Ports[k];
             openVolts[k] = Across(open, port.High, port.Low);
             for (var l = 0; l < ports; l++) impedance[k * ports + l] = Across(response.AsSpan(l * n, n), port.High, port.Low);
-            if (!corners[k]) impedance[k * ports + k] += port.SeriesOhms.Value(theta);
+            if (!corners[k] || port.IsStraight) impedance[k * ports + k] += port.SeriesOhms.Value(theta);
         }
 
         if (start.Length == ports) start.CopyTo(z);
@@ -337,7 +337,7 @@ public sealed class NetworkSolver
             ref readonly var e = ref network.Ports[k];
             AddTerm(e.Drop, scale * mu[k], gradient);
             if (corners[k]) AddTerm(e.Excess, scale * mu[k], gradient);
-            else AddTerm(e.SeriesOhms, scale * mu[k] * loaded[k], gradient);
+            if (!corners[k] || e.IsStraight) AddTerm(e.SeriesOhms, scale * mu[k] * loaded[k], gradient);
             if (!corners[k]) AddTerm(e.Ideality, scale * mu[k] * network.ThermalVolts * curves[k].VoltsByThermal(loaded[k]), gradient);
             if (e.Row >= 0 || loaded[k] == 0) continue;
             var gain = e.Gain.Value(theta);
@@ -364,7 +364,7 @@ public sealed class NetworkSolver
         for (var k = 0; k < ports; k++)
         {
             ref readonly var port = ref net.Ports[k];
-            corners[k] = law == JunctionLaw.ConstantDrop || port.Ideality.IsConstantZero;
+            corners[k] = law == JunctionLaw.ConstantDrop || port.IsStraight;
             drops[k] = port.Drop.Value(theta);
             if (corners[k]) drops[k] += port.Excess.Value(theta);
             else curves[k] = new JunctionCurve(drops[k], port.ReferenceAmperes, port.Ideality.Value(theta) * net.ThermalVolts);

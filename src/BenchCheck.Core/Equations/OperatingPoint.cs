@@ -54,6 +54,15 @@ public sealed class OperatingPoint
                 yield return (q.JointName(Transistor.Collector), sign * (forward - reverse - reverse / reverseGain));
                 yield return (q.JointName(Transistor.Base), sign * (forward / gain + reverse / reverseGain));
             }
+            else if (part is Regulator u)
+            {
+                yield return (u.JointName(Regulator.Output), -JunctionAmperes(part, JunctionRole.Delivery));
+            }
+            else if (part is Mosfet m)
+            {
+                var channel = JunctionAmperes(part, JunctionRole.Channel) - JunctionAmperes(part, JunctionRole.ReverseChannel) - JunctionAmperes(part, JunctionRole.Forward);
+                yield return (m.JointName(Mosfet.Drain), m.IsNChannel ? channel : -channel);
+            }
             else if (Through(part) is { } amperes)
             {
                 yield return (part.Designator, amperes);
@@ -85,6 +94,12 @@ public sealed class OperatingPoint
             if (e.TransportFrom != e.TransportTo) watts += (Volts(e.TransportFrom) - Volts(e.TransportTo)) * ports[k];
         }
 
+        // What a regulator draws for itself; a current source's own power is a supply's.
+        foreach (ref readonly var e in network.Currents.AsSpan())
+        {
+            if (e.Part == index && part is Regulator) watts += (Volts(e.From) - Volts(e.To)) * e.Amperes.Value(theta);
+        }
+
         foreach (ref readonly var e in network.Amplifiers.AsSpan())
         {
             if (e.Part == index) watts += Math.Abs(Volts(e.Output) * x[e.Row]);
@@ -100,6 +115,8 @@ public sealed class OperatingPoint
         Diode => JunctionAmperes(part, JunctionRole.Forward) > OffAmperes ? "conducting"
             : JunctionAmperes(part, JunctionRole.Breakdown) > OffAmperes ? "breakdown" : "off",
         OpAmp => LimitState(part),
+        Mosfet => ChannelState(part),
+        Regulator => RegulatorState(part),
         _ => null,
     };
 
@@ -137,6 +154,17 @@ public sealed class OperatingPoint
         if (reverse <= SaturatedShare * forward) return "active";
         return reverse > forward ? "reversed" : "saturated";
     }
+
+    private string ChannelState(Part part)
+    {
+        var (forward, reverse) = (JunctionAmperes(part, JunctionRole.Channel), JunctionAmperes(part, JunctionRole.ReverseChannel));
+        if (forward > OffAmperes && reverse > OffAmperes) return "on";
+        if (forward > OffAmperes || reverse > OffAmperes) return "partly on";
+        return JunctionAmperes(part, JunctionRole.Forward) > OffAmperes ? "off, body diode conducting" : "off";
+    }
+
+    private string RegulatorState(Part part) =>
+        JunctionAmperes(part, JunctionRole.Reference) > OffAmperes ? "regulating" : JunctionAmperes(part, JunctionRole.Delivery) > OffAmperes ? "in drop-out" : "off";
 
     private string LimitState(Part part)
     {

@@ -24,7 +24,10 @@ internal sealed record PartSyntax(PartKind Kind, Func<PartReader, ImmutableArray
         new(Diode.Zener, (p, nodes) => MakeDiode(p, nodes, Diode.Zener, UsualTolerance.Drop, Diode.UsualDrop)),
         new(Transistor.Npn, (p, nodes) => MakeTransistor(p, nodes, Transistor.Npn)),
         new(Transistor.Pnp, (p, nodes) => MakeTransistor(p, nodes, Transistor.Pnp)),
+        new(Mosfet.NChannel, (p, nodes) => MakeMosfet(p, nodes, Mosfet.NChannel)),
+        new(Mosfet.PChannel, (p, nodes) => MakeMosfet(p, nodes, Mosfet.PChannel)),
         new(OpAmp.PartKind, MakeOpAmp),
+        new(Regulator.PartKind, MakeRegulator),
         new(Capacitor.PartKind, (p, nodes) =>
             p.Required("value", Unit.Farad, UsualTolerance.Capacitor, Limits.Farads) is { } farads ? new Capacitor(p.Designator, nodes, farads) : null),
         new(Inductor.PartKind, MakeInductor),
@@ -114,6 +117,23 @@ internal sealed record PartSyntax(PartKind Kind, Func<PartReader, ImmutableArray
             OutputOhms = output,
             StatedAmperes = p.Table.TakeNumber("at", Unit.Ampere, Limits.StatedAmperes),
         };
+    }
+
+    private static Mosfet? MakeMosfet(PartReader p, ImmutableArray<string> nodes, PartKind kind)
+    {
+        var ohms = p.OrUsual("on_resistance", Unit.Ohm, UsualTolerance.OnResistance, Limits.SeriesResistance, Mosfet.UsualOnOhms);
+        var threshold = p.OrUsual("threshold", Unit.Volt, UsualTolerance.Threshold, Limits.PositiveVolts, Mosfet.UsualThreshold);
+        var siemens = p.Optional("transconductance", Unit.Siemens, UsualTolerance.OutputResistance, Limits.ControlledGain);
+        if (ohms is null || threshold is null || (siemens is null && p.Has("transconductance"))) return null;
+        return new Mosfet(kind, p.Designator, nodes, ohms, threshold) { Siemens = siemens };
+    }
+
+    private static Regulator? MakeRegulator(PartReader p, ImmutableArray<string> nodes)
+    {
+        var volts = p.Required("value", Unit.Volt, UsualTolerance.Regulator, Limits.PositiveVolts);
+        var dropOut = p.OrUsual("drop_out", Unit.Volt, UsualTolerance.DropOut, Limits.PositiveVolts, Regulator.UsualDropOut);
+        var idle = p.OrUsual("idle_current", Unit.Ampere, UsualTolerance.IdleCurrent, Limits.StatedAmperes with { Hint = null }, Regulator.UsualIdleAmperes);
+        return volts is null || dropOut is null || idle is null ? null : new Regulator(p.Designator, nodes, volts, dropOut, idle);
     }
 
     private static OpAmp? MakeOpAmp(PartReader p, ImmutableArray<string> nodes)

@@ -19,6 +19,11 @@ internal static class UsualTolerance
     public static readonly Tolerance Saturation = Tolerance.Absolute(0.1);
     public static readonly Tolerance AmplifierGain = Tolerance.Percent(50);
     public static readonly Tolerance ControlledGain = Tolerance.Percent(5);
+    public static readonly Tolerance OnResistance = Tolerance.Percent(50);
+    public static readonly Tolerance Threshold = Tolerance.Percent(30);
+    public static readonly Tolerance Regulator = Tolerance.Percent(4);
+    public static readonly Tolerance DropOut = Tolerance.Percent(30);
+    public static readonly Tolerance IdleCurrent = Tolerance.Percent(50);
     public static readonly Tolerance OutputResistance = Tolerance.Percent(50);
     public static readonly Tolerance Capacitor = Tolerance.Percent(20);
     public static readonly Tolerance Inductor = Tolerance.Percent(20);

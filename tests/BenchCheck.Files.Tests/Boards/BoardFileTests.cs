@@ -58,6 +58,9 @@ public class BoardFileTests
             Q1 = { kind = "npn", gain = "?", drop = "0.6 V", saturation = "0.1 V", pins = { collector = "OUT", base = "W", emitter = "GND" } }
             Q2 = { kind = "pnp", pins = { collector = "OUT", base = "W", emitter = "VCC" } }
             U1 = { kind = "opamp", gain = "100k", offset = "2 mV", headroom = "1.2 V", pins = { plus = "W", minus = "OUT", output = "OUT", positive_supply = "VCC", negative_supply = "GND" } }
+            U2 = { kind = "regulator", value = "5 V 2%", drop_out = "1.2 V", idle_current = "4 mA", pins = { input = "VCC", output = "OUT", common = "GND" } }
+            M1 = { kind = "nmos", on_resistance = "2.5", threshold = "1 V..2.5 V", transconductance = "80 mS", pins = { drain = "OUT", gate = "W", source = "GND" } }
+            M2 = { kind = "pmos", pins = { drain = "OUT", gate = "W", source = "VCC" } }
             C1 = { kind = "capacitor", value = "10 uF", pins = ["OUT", "GND"] }
             L1 = { kind = "inductor", value = "1 mH", resistance = "2 10%", pins = ["OUT", "W"] }
             E1 = { kind = "vcvs", gain = "10 1%", control = ["OUT", "GND"], pins = { plus = "X1", minus = "GND" } }
@@ -76,6 +79,9 @@ public class BoardFileTests
         Assert.True(((Transistor)board.Find("Q1")!).Gain.IsUnknown);
         Assert.Equal(Transistor.UsualGain, ((Transistor)board.Find("Q2")!).Gain);
         Assert.Equal((-0.002, 0.002, 1.2), (((OpAmp)board.Find("U1")!).Offset.Low, ((OpAmp)board.Find("U1")!).Offset.High, ((OpAmp)board.Find("U1")!).Headroom));
+        Assert.Equal((1.2, 4e-3), (((Regulator)board.Find("U2")!).DropOut.Value, ((Regulator)board.Find("U2")!).IdleAmperes.Value));
+        Assert.Equal((2.5, 2.5, 0.08), (((Mosfet)board.Find("M1")!).OnOhms.Value, ((Mosfet)board.Find("M1")!).Threshold.High, ((Mosfet)board.Find("M1")!).Siemens!.Value));
+        Assert.Equal(Mosfet.UsualThreshold, ((Mosfet)board.Find("M2")!).Threshold);
         Assert.Equal(2, ((Inductor)board.Find("L1")!).WindingOhms.Value);
         Assert.Equal(new Control.NodePair("OUT", "GND"), ((ControlledSource)board.Find("E1")!).Control);
         Assert.Equal(new Control.PartCurrent("R1"), ((ControlledSource)board.Find("F1")!).Control);

@@ -42,6 +42,8 @@ internal static class ShortFaults
             (Transistor.Collector, Transistor.Emitter, FaultKind.CollectorEmitterShort),
             (Transistor.Collector, Transistor.Base, FaultKind.CollectorBaseShort),
         ],
+        Mosfet => [(Mosfet.Drain, Mosfet.Source, FaultKind.Shorted), (Mosfet.Gate, Mosfet.Source, FaultKind.Shorted), (Mosfet.Gate, Mosfet.Drain, FaultKind.Shorted)],
+        Regulator => [(Regulator.Input, Regulator.Output, FaultKind.Shorted), (Regulator.Output, Regulator.Common, FaultKind.Shorted)],
         Potentiometer => [(0, 1, FaultKind.Shorted), (1, 2, FaultKind.Shorted), (0, 2, FaultKind.Shorted)],
         Resistor or Diode or Inductor or Capacitor => [(0, 1, FaultKind.Shorted)],
         _ => [],

@@ -230,7 +230,12 @@ public sealed class SmallSignalSolver
         {
             Add(row, row, 1);
         }
-        else if (IsSmooth(e))
+        else if (!e.Siemens.IsConstantZero)
+        {
+            AddDifference(row, e.High, e.Low, e.Siemens.Value(theta));
+            Add(row, row, -1);
+        }
+        else if (!e.IsStraight)
         {
             AddDifference(row, e.High, e.Low, Siemens(e, portCurrents[k]));
             Add(row, row, -1);
@@ -241,9 +246,6 @@ public sealed class SmallSignalSolver
             Add(row, row, -e.SeriesOhms.Value(theta));
         }
     }
-
-    /// <summary>True for a junction, whose slope follows its current; false for a limit, or a corner that holds a voltage.</summary>
-    private static bool IsSmooth(in Network.CompiledPort port) => !port.Ideality.IsConstantZero;
 
     private double Siemens(in Network.CompiledPort port, double amperes) =>
         amperes / (port.Ideality.Value(theta) * network.ThermalVolts + port.SeriesOhms.Value(theta) * amperes);
@@ -306,7 +308,13 @@ public sealed class SmallSignalSolver
             if (e.Row >= 0 || portCurrents[k] <= 0) continue;
             var gain = e.Gain.Value(theta);
             AddTerm(e.Gain, Product(Across(l, e.High, e.Low), x[row]) / (gain * gain), gradient);
-            if (!IsSmooth(e))
+            if (!e.Siemens.IsConstantZero)
+            {
+                AddTerm(e.Siemens, -Product(l[row], Across(x, e.High, e.Low)), gradient);
+                continue;
+            }
+
+            if (e.IsStraight)
             {
                 AddTerm(e.SeriesOhms, Product(l[row], x[row]), gradient);
                 continue;

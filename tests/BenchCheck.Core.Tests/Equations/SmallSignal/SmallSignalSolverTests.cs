@@ -55,6 +55,18 @@ public class SmallSignalSolverTests
         Assert.Equal(137, new SignalBoard(sketch).CurrentGain("Q1.collector", "Q1.base"), 1e-6);
     }
 
+    [Fact]
+    public void A_stated_transconductance_makes_the_gain_of_a_MOSFET_stage()
+    {
+        // Common source with its source grounded: −g_m R_D; as a follower g_m R_S / (1 + g_m R_S).
+        Mosfet Q(string drain, string source) => new(Mosfet.NChannel, "Q1", [drain, "G", source], Nominal.Exactly(50), Nominal.Exactly(2)) { Siemens = Nominal.Exactly(12e-3) };
+        var stage = new BoardSketch().Supply("V1", "VCC", 12).Resistor("R1", "VCC", "G", 1e6).Resistor("R2", "G", "0", 226e3).Resistor("R3", "VCC", "D", 680).Add(Q("D", "0"));
+        Assert.Equal(-12e-3 * 680, new SignalBoard(stage).Gain("D", "G"), 1e-6);
+        Assert.Equal(1e6 * 226e3 / 1.226e6, new SignalBoard(stage).InputOhms("G"), 1);
+        var follower = new BoardSketch().Supply("V1", "VCC", 12).Resistor("R1", "VCC", "G", 1e6).Resistor("R2", "G", "0", 1e6).Add(Q("VCC", "S")).Resistor("R3", "S", "0", 470);
+        Assert.Equal(12e-3 * 470 / (1 + 12e-3 * 470), new SignalBoard(follower).Gain("S", "G"), 1e-6);
+    }
+
     [Theory]
     [InlineData(ReadingQuantity.Gain, "OUT", "IN", null)]
     [InlineData(ReadingQuantity.Gain, "OUT", "IN", 120.0)]
