@@ -9,6 +9,6 @@ public static class FaultCatalogue
     public static IEnumerable<FaultHypothesis> Of(Board board) =>
     [
         .. TwoPinFaults.Of(board), .. ShortFaults.Of(board), .. TransistorFaults.Of(board), .. SourceFaults.Of(board), .. SwapFaults.Of(board),
-        .. OtherPartFaults.Of(board),
+        .. OtherPartFaults.Of(board), .. ConditionFaults.Of(board),
     ];
 }

@@ -63,6 +63,26 @@ public class SuspectTests
     }
 
     [Fact]
+    public void A_condition_that_was_not_set_up_is_told_from_a_faulty_part()
+    {
+        var dark = Condition.Powered with { Name = "dark" };
+        var bright = dark with { Name = "bright", Set = dark.Set.Add("V2", Nominal.Within(3, Tolerance.Absolute(0.02))) };
+        var board = new BoardSketch().Supply("V1", "VCC", 12, percent: 1).Supply("V2", "S", 0.5, percent: 4).Resistor("R1", "S", "B1", 22e3, 5).Resistor("R2", "VCC", "C1", 4.7e3, 5)
+            .Resistor("R3", "E1", "0", 1e3, 5).Npn("Q1", "C1", "B1", "E1", 100, 300, 0.65).In(dark).In(bright).Board;
+        var bench = new Bench(board, [Meter.Usual], []);
+        var still = board.In([dark, bright with { Set = dark.Set }, .. board.Conditions.Skip(2)]);
+        string[] nodes = ["VCC", "S", "C1", "E1"];
+        var set = new ReadingSet(null, [.. new[] { "dark", "bright" }.SelectMany(c => nodes.Select(n => new Reading([], c, ReadingQuantity.Voltage, n, "0", 0)))]);
+        var probes = set.Readings.Select(r => Probe.Of(bench, r)).ToArray();
+        var model = new BoardModel(still, probes, new bool[probes.Length], new NetworkSolver(JunctionLaw.Exponential));
+        var values = new double[probes.Length];
+        model.Predict([.. model.Parameters.Select(p => p.Mean)], values, []);
+        var readings = set with { Readings = [.. set.Readings.Select((r, i) => r with { Value = Math.Round(values[i], 3) })] };
+        var first = new Reconciliation(bench, CheckSettings.Default).Run(readings, TestContext.Current.CancellationToken).Suspects[0];
+        Assert.Contains(first.Alike.Prepend(first.Fault), f => f.Text == "bright not set up, the board was still in dark" && f.Parts.SequenceEqual(["V2"]));
+    }
+
+    [Fact]
     public void With_one_redundant_reading_all_normalised_residuals_are_equal_and_the_wrong_reading_cannot_be_told()
     {
         // Three exact resistors in a chain between two exact taps: two unknown supplies, three readings, redundancy one.
