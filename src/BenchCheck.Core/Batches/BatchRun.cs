@@ -9,7 +9,7 @@ namespace BenchCheck.Core.Batches;
 /// <summary>Checks many boards of one kind on all processors; what comes out has the order of what went in.</summary>
 /// <remarks>
 /// Boards are taken from the source only as fast as they are checked, and at most a few a processor are under way, so memory does not grow
-/// with the batch. A board that cannot be checked costs only itself.
+/// with the batch. A board that cannot be checked costs only itself. What comes out of a board does not depend on which others a worker had before.
 /// </remarks>
 /// <param name="workers">how many boards are checked at a time</param>
 public sealed class BatchRun(Bench bench, CheckSettings settings, FaultRates? rates, int workers)
@@ -24,14 +24,15 @@ public sealed class BatchRun(Bench bench, CheckSettings settings, FaultRates? ra
     public IEnumerable<T> Run<T>(IEnumerable<ReadingSet> boards, Func<CheckResult, T> finish, Func<ReadingSet, string, T> fail, CancellationToken cancel = default)
     {
         ArgumentNullException.ThrowIfNull(boards);
-        using var gate = new SemaphoreSlim(workers);
+        // A scheduler and not a semaphore: boards that wait for a processor must not hold a thread.
+        var scheduler = new ConcurrentExclusiveSchedulerPair(TaskScheduler.Default, workers).ConcurrentScheduler;
         var underWay = new Queue<Task<T>>();
         try
         {
             foreach (var board in boards)
             {
                 cancel.ThrowIfCancellationRequested();
-                underWay.Enqueue(Task.Run(() => One(board, gate, finish, fail, cancel), cancel));
+                underWay.Enqueue(Task.Factory.StartNew(() => One(board, finish, fail, cancel), cancel, TaskCreationOptions.DenyChildAttach, scheduler));
                 if (underWay.Count >= workers * UnderWayEach) yield return underWay.Dequeue().GetAwaiter().GetResult();
             }
 
@@ -43,9 +44,8 @@ public sealed class BatchRun(Bench bench, CheckSettings settings, FaultRates? ra
         }
     }
 
-    private T One<T>(ReadingSet board, SemaphoreSlim gate, Func<CheckResult, T> finish, Func<ReadingSet, string, T> fail, CancellationToken cancel)
+    private T One<T>(ReadingSet board, Func<CheckResult, T> finish, Func<ReadingSet, string, T> fail, CancellationToken cancel)
     {
-        gate.Wait(cancel);
         if (!idle.TryTake(out var reconciliation)) reconciliation = new Reconciliation(bench, settings, rates);
         try
         {
@@ -58,7 +58,6 @@ public sealed class BatchRun(Bench bench, CheckSettings settings, FaultRates? ra
         finally
         {
             idle.Add(reconciliation);
-            gate.Release();
         }
     }
 }

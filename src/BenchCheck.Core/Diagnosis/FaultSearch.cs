@@ -150,9 +150,9 @@ internal sealed class FaultSearch
 
     private Fault? Alternative(string kind, string words, double[] measured, double[] noise, double best)
     {
-        Healthy.Forget();
         healthyStart ??= fit.Linearise(Healthy);
         if (healthyStart is null) return null;
+        Healthy.Forget();
         var evidence = fit.Fit(Healthy, measured, noise, healthyStart, best + Hopeless);
         return double.IsNegativeInfinity(evidence.LogEvidence) ? null : new Fault(
             [new NamedFault(kind, [], [], [], [], null, null, null, words)], [Math.Log(rates[kind])], evidence, Healthy, fit.Phi.ToArray(), noise, fit.Predicted.ToArray());

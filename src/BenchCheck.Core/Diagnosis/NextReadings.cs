@@ -1,4 +1,5 @@
 using System.Collections.Immutable;
+using System.Runtime.CompilerServices;
 using BenchCheck.Core.Boards;
 using BenchCheck.Core.Checking;
 using BenchCheck.Core.Equations;
@@ -12,9 +13,11 @@ namespace BenchCheck.Core.Diagnosis;
 /// <remarks>
 /// Each likely fault predicts each candidate with its own uncertainty: that of its fitted parameters, carried through the Jacobian, and
 /// the meter's. Candidates are the node voltages of the DC conditions, resistances between nodes that share a part on the unpowered board and,
-/// where a generator is connected, the gain to every node and the resistance that the generator meets.
+/// where a generator is connected, the gain to every node and the resistance that the generator meets. One instance serves every set of readings
+/// that is taken at the same places.
 /// </remarks>
-internal sealed class NextReadings(Bench bench, ReadingPlan plan, EvidenceFit fit, NetworkSolver solver)
+/// <param name="taken">where the board is read already</param>
+internal sealed class NextReadings(Bench bench, ImmutableArray<Probe> taken, EvidenceFit fit, NetworkSolver solver)
 {
     /// <summary>Faults beyond this many, or less likely than this, do not change which reading is best.</summary>
     private const int MostFaults = 40;
@@ -29,9 +32,13 @@ internal sealed class NextReadings(Bench bench, ReadingPlan plan, EvidenceFit fi
     /// <summary>How many different outcomes of a reading are put into words.</summary>
     private const int MostOutcomes = 4;
 
-    public ImmutableArray<NextReading> Rank(List<FaultGroup> groups, CancellationToken cancel)
+    private readonly Probe[] candidates = Candidates(bench, taken);
+
+    /// <summary>Each faulty board read at the candidates, compiled once for as long as its fault is kept.</summary>
+    private readonly ConditionalWeakTable<BoardModel, BoardModel> atCandidates = [];
+
+    public ImmutableArray<NextReading> Rank(ReadingPlan plan, List<FaultGroup> groups, CancellationToken cancel)
     {
-        var candidates = Candidates();
         var faults = groups.SelectMany((g, index) => g.Members.Select(m => (m.Fault, m.Probability, Group: index)))
             .Where(f => !f.Fault.IsBroad && f.Probability > LeastProbability).OrderByDescending(f => f.Probability).Take(MostFaults).ToArray();
         if (candidates.Length == 0 || faults.Length < 2) return [];
@@ -43,7 +50,7 @@ internal sealed class NextReadings(Bench bench, ReadingPlan plan, EvidenceFit fi
         for (var h = 0; h < kinds; h++)
         {
             cancel.ThrowIfCancellationRequested();
-            usable[h] = TryPredict(faults[h].Fault, candidates, mean, variance, h);
+            usable[h] = TryPredict(faults[h].Fault, plan, mean, variance, h);
         }
 
         var chosen = Enumerable.Range(0, kinds).Where(h => usable[h]).ToArray();
@@ -63,7 +70,7 @@ internal sealed class NextReadings(Bench bench, ReadingPlan plan, EvidenceFit fi
         return [.. ranked.OrderByDescending(r => Math.Round(r.Bits, 1)).ThenBy(r => r.Caution is null && r.Quantity == ReadingQuantity.Voltage ? 0 : 1).ThenByDescending(r => r.Bits).Take(MostReadings)];
     }
 
-    private Probe[] Candidates()
+    private static Probe[] Candidates(Bench bench, ImmutableArray<Probe> taken)
     {
         var board = bench.Board;
         var meter = bench.Meters[0];
@@ -90,20 +97,21 @@ internal sealed class NextReadings(Bench bench, ReadingPlan plan, EvidenceFit fi
             }
         }
 
-        return [.. result.Where(c => !plan.Probes.Any(p =>
+        return [.. result.Where(c => !taken.Any(p =>
             p.Condition == c.Condition && p.Quantity == c.Quantity && p.At == c.At && (p.Against ?? board.Reference) == c.Against))];
     }
 
     private static double OhmRange(Meter meter) => (meter.Resistance ?? Meter.Usual.Resistance!).RangeFor(50e3);
 
-    private bool TryPredict(Fault fault, Probe[] candidates, double[,] mean, double[,] variance, int h)
+    private bool TryPredict(Fault fault, ReadingPlan plan, double[,] mean, double[,] variance, int h)
     {
         fault.Model.Forget();
         if (double.IsInfinity(fit.Polish(fault.Model, plan.Measured, fault.Noise, fault.Phi).ChiSquared)) return false;
         var p = fault.Model.BoardParameterCount;
         var covariance = new double[p * p];
         fit.Posterior(p, covariance);
-        var model = BoardModel.AtPlaces(fault.Model.Board, candidates, solver);
+        var model = atCandidates.GetValue(fault.Model, m => BoardModel.AtPlaces(m.Board, candidates, solver));
+        model.Forget();
         var values = new double[candidates.Length];
         var jacobian = new double[candidates.Length * p];
         try

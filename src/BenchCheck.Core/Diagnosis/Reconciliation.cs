@@ -18,10 +18,13 @@ public sealed class Reconciliation
     private const double LeastShown = 0.002;
     private const int MostSuspects = 12;
 
+    /// <summary>How many sets of places are kept: boards of a shelf differ in them where a reading lies near the end of a meter's range.</summary>
+    private const int MostKept = 16;
+
     private readonly NetworkSolver solver;
     private readonly EvidenceFit fit = new();
     private readonly FaultRates rates;
-    private (ImmutableArray<Probe> Probes, ImmutableArray<bool> HasScaleError, FaultSearch Search)? compiled;
+    private readonly List<Compiled> compiled = [];
 
     public Reconciliation(Bench bench, CheckSettings settings, FaultRates? rates = null)
     {
@@ -49,7 +52,7 @@ public sealed class Reconciliation
             return Checker.Check(Bench, readings, plan, model, fit, Settings).Result;
         }
 
-        var search = SearchFor(plan);
+        var (search, next) = CompiledFor(plan);
         var (check, _) = Checker.Check(Bench, readings, plan, search.Healthy, fit, Settings);
         int[] lines = [.. readings.Readings.Select(r => r.Lines.IsDefaultOrEmpty ? 0 : r.Lines[0])];
         var faults = search.Find(plan.Measured, plan.Noise, lines, cancel);
@@ -66,16 +69,25 @@ public sealed class Reconciliation
         return check with
         {
             Suspects = [.. groups.Where(g => g.Probability > LeastShown).Take(MostSuspects).Select(words.Suspect)],
-            Next = new NextReadings(Bench, plan, fit, solver).Rank(groups, cancel),
+            Next = next.Rank(plan, groups, cancel),
         };
     }
 
-    /// <summary>The compiled faults, kept while boards are read at the same places.</summary>
-    private FaultSearch SearchFor(ReadingPlan plan)
+    /// <summary>What is compiled for the places where a board is read; those used last are kept.</summary>
+    private Compiled CompiledFor(ReadingPlan plan)
     {
-        if (compiled is { } kept && kept.Probes.SequenceEqual(plan.Probes) && kept.HasScaleError.SequenceEqual(plan.HasScaleError)) return kept.Search;
-        var search = new FaultSearch(Bench.Board, plan.Probes, plan.HasScaleError, solver, rates);
-        compiled = (plan.Probes, plan.HasScaleError, search);
-        return search;
+        var index = compiled.FindIndex(c => c.Probes.SequenceEqual(plan.Probes) && c.HasScaleError.SequenceEqual(plan.HasScaleError));
+        var found = index < 0
+            ? new Compiled(plan.Probes, plan.HasScaleError, new FaultSearch(Bench.Board, plan.Probes, plan.HasScaleError, solver, rates), new NextReadings(Bench, plan.Probes, fit, solver))
+            : compiled[index];
+        if (index >= 0) compiled.RemoveAt(index);
+        else if (compiled.Count == MostKept) compiled.RemoveAt(0);
+        compiled.Add(found);
+        return found;
+    }
+
+    private sealed record Compiled(ImmutableArray<Probe> Probes, ImmutableArray<bool> HasScaleError, FaultSearch Search, NextReadings Next)
+    {
+        public void Deconstruct(out FaultSearch search, out NextReadings next) => (search, next) = (Search, Next);
     }
 }

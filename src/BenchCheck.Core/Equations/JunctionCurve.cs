@@ -10,6 +10,9 @@ internal readonly struct JunctionCurve
     /// <summary>Slope resistance at which a junction counts as a mere leakage.</summary>
     private const double LeakageOhms = 1e13;
 
+    /// <summary>Share of the current up to which the series of <see cref="TangentMiss"/> holds to a millionth of itself.</summary>
+    private const double SmallChange = 1e-2;
+
     private const double BoltzmannOverCharge = 8.617333262145177e-5;
 
     private readonly double thermal;
@@ -45,6 +48,15 @@ internal readonly struct JunctionCurve
         if (amperes <= bendAmperes) return 0;
         var share = saturation / (amperes + saturation);
         return Math.Log((amperes + saturation) / reference) + share * Math.Log(reference / saturation);
+    }
+
+    /// <summary>How far, in volts, the tangent laid at a current misses the curve when the current changes.</summary>
+    public double TangentMiss(double amperes, double change)
+    {
+        var u = change / (amperes + saturation);
+        return Math.Abs(u) <= SmallChange && Math.Min(amperes, amperes + change) > bendAmperes
+            ? thermal * u * u * (0.5 - u * (1.0 / 3 - u * (0.25 - u / 5)))
+            : Math.Abs(Volts(amperes + change) - Volts(amperes) - SlopeOhms(amperes) * change);
     }
 
     /// <summary>dv/dz.</summary>

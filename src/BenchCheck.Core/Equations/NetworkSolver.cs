@@ -216,9 +216,7 @@ public sealed class NetworkSolver
                 continue;
             }
 
-            var change = -meterAmperes * yielding[k];
-            var off = Math.Abs(curves[k].Volts(z[k] + change) - curves[k].Volts(z[k]) - slope[k] * change);
-            if (!(off <= TangentVolts)) return false;
+            if (!(curves[k].TangentMiss(z[k], -meterAmperes * yielding[k]) <= TangentVolts)) return false;
         }
 
         return true;

@@ -25,6 +25,7 @@ internal sealed class PortSolver
 
     private readonly LinearComplementarity complementarity = new();
     private double[] intercept = [];
+    private double[] curveVolts = [];
     private double[] target = [];
     private double[] trial = [];
     private double[] smoothCurrent = [];
@@ -93,13 +94,14 @@ internal sealed class PortSolver
         ReadOnlySpan<double> open, ReadOnlySpan<double> impedance, ReadOnlySpan<JunctionCurve> curves, ReadOnlySpan<double> drops, Span<double> z)
     {
         var slope = Slope;
+        for (var i = 0; i < smoothCount; i++) curveVolts[smooth[i]] = curves[smooth[i]].Volts(z[smooth[i]]);
         for (var step = 0; step < NewtonSteps; step++)
         {
             for (var i = 0; i < smoothCount; i++)
             {
                 var k = smooth[i];
                 slope[k] = curves[k].SlopeOhms(z[k]);
-                intercept[k] = curves[k].Volts(z[k]) - slope[k] * z[k];
+                intercept[k] = curveVolts[k] - slope[k] * z[k];
             }
 
             if (!SolveTangent(open, impedance, drops)) return false;
@@ -110,16 +112,17 @@ internal sealed class PortSolver
                 var k = smooth[i];
                 var volts = intercept[k] + slope[k] * target[k];
                 if (!double.IsFinite(volts)) return false;
+                var onCurve = curves[k].Volts(target[k]);
                 if (target[k] > z[k])
                 {
-                    worst = Math.Max(worst, Math.Abs(volts - curves[k].Volts(target[k])));
-                    z[k] = target[k];
+                    worst = Math.Max(worst, Math.Abs(volts - onCurve));
+                    (z[k], curveVolts[k]) = (target[k], onCurve);
                 }
                 else
                 {
                     var amperes = curves[k].Amperes(volts);
-                    worst = Math.Max(worst, Math.Min(Math.Abs(volts - curves[k].Volts(target[k])), Math.Abs(amperes - target[k]) * 1e3));
-                    z[k] = amperes;
+                    worst = Math.Max(worst, Math.Min(Math.Abs(volts - onCurve), Math.Abs(amperes - target[k]) * 1e3));
+                    (z[k], curveVolts[k]) = (amperes, curves[k].Volts(amperes));
                 }
             }
 
@@ -210,6 +213,7 @@ internal sealed class PortSolver
         smoothColumns = new double[ports * ports];
         cornerMatrix = new double[ports * ports];
         intercept = new double[ports];
+        curveVolts = new double[ports];
         target = new double[ports];
         trial = new double[ports];
         smoothCurrent = new double[ports];

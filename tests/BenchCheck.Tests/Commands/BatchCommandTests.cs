@@ -51,8 +51,7 @@ public sealed class BatchCommandTests : IDisposable
         {
             File.WriteAllBytes(target, whole[..part]);
             Assert.Equal(1, await line.Run("batch", board, shelf, "--out", target, "--resume"));
-            // The fit's last digits depend on where the worker's previous board left it, so the rows are compared by what they say.
-            Assert.Equal(Said(Encoding.UTF8.GetString(whole)), Said(File.ReadAllText(target)));
+            Assert.Equal(Encoding.UTF8.GetString(whole), File.ReadAllText(target));
             Assert.Equal(summary, line.Output);
         }
     }
@@ -104,10 +103,6 @@ public sealed class BatchCommandTests : IDisposable
     }
 
     public void Dispose() => line.Dispose();
-
-    /// <summary>Header, serials and verdicts.</summary>
-    private static string[] Said(string results) => [.. results.Split('\n').Select(l =>
-        l.StartsWith('{') ? JsonDocument.Parse(l).RootElement is var r ? $"{r.GetProperty("serial")} {r.GetProperty("verdict")}" : "" : l.StartsWith("serial", StringComparison.Ordinal) ? l : string.Join(',', l.Split(',').Take(2)))];
 
     /// <summary>Boards that differ a little, as parts do; the one at <paramref name="faulty"/> has R4 a decade too high.</summary>
     private static string Shelf(int count, int faulty)
