@@ -42,7 +42,12 @@ public sealed class Reconciliation
 
     /// <exception cref="NoOperatingStateException">no state of the devices satisfies the equations</exception>
     /// <exception cref="OperationCanceledException">cancelled</exception>
-    public CheckResult Run(ReadingSet readings, CancellationToken cancel = default)
+    public CheckResult Run(ReadingSet readings, CancellationToken cancel = default) => Run(readings, null, cancel);
+
+    /// <param name="compared">told the result without suspects and next readings as soon as it is there, when these are still to be sought</param>
+    /// <exception cref="NoOperatingStateException">no state of the devices satisfies the equations</exception>
+    /// <exception cref="OperationCanceledException">cancelled</exception>
+    public CheckResult Run(ReadingSet readings, Action<CheckResult>? compared, CancellationToken cancel = default)
     {
         ArgumentNullException.ThrowIfNull(readings);
         var plan = ReadingPlan.Of(Bench, readings);
@@ -54,6 +59,7 @@ public sealed class Reconciliation
 
         var (search, next) = CompiledFor(plan);
         var (check, _) = Checker.Check(Bench, readings, plan, search.Healthy, fit, Settings);
+        compared?.Invoke(check);
         int[] lines = [.. readings.Readings.Select(r => r.Lines.IsDefaultOrEmpty ? 0 : r.Lines[0])];
         var faults = search.Find(plan.Measured, plan.Noise, lines, cancel);
         var posterior = Posterior.Of(faults);

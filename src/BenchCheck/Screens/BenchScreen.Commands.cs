@@ -16,32 +16,36 @@ internal sealed partial class BenchScreen
         new(Key.F3, "F3", "View", "_Parts", "parts: list, estimate, interval, power", () => ShowView(ScreenView.Parts)),
         new(Key.F4, "F4", "View", "P_lot", "plot: readings in their bands, residuals", () => ShowView(ScreenView.Plot)),
         new(Key.F5, "F5", "Reading", "_Condition", "the next condition of the board", () => Look(s => s.NextCondition())),
-        new(Key.F6, "F6", "Reading", "_Add elsewhere", "add a reading anywhere: node against node, a current, another meter or range", AddReading),
+        new(Key.F6, "F6", "Reading", "_Add elsewhere", "add a reading anywhere: node against node, a current, another meter or range; in the parts view: add a part", () => InView(AddReading, AddPart)),
         new(Key.F7, "F7", "View", "_Suspect in table", "show the readings as the next suspect explains them", () => Look(s => s.NextSuspect())),
         new(Key.F8, "F8", "Help", "_Cautions", "cautions, and what was assumed", ShowCautions),
         new(Key.F9, "F9", null, "Menu", "the menus", OpenMenu),
-        new(Key.Z.WithCtrl, "Ctrl+Z", "Reading", "_Undo", "undo the last entry", () => EnterHistory(s => s.CanUndo, s => s.Undo(), "Nothing to undo.")),
+        new(Key.U.WithCtrl, "Ctrl+U", "Reading", "_Undo", "undo the last entry", () => EnterHistory(s => s.CanUndo, s => s.Undo(), "Nothing to undo.")),
         new(Key.Y.WithCtrl, "Ctrl+Y", "Reading", "_Redo", "redo what was undone", () => EnterHistory(s => s.CanRedo, s => s.Redo(), "Nothing to redo.")),
         new(Key.R.WithCtrl, "Ctrl+R", "Reading", "Re_peat", "take the typed value as a repeat of the reading, not in its place", () => Commit(true)),
         new(Key.N.WithCtrl, "Ctrl+N", "Reading", "_Note", "a note on the reading", EditNote),
-        new(Key.D.WithCtrl, "Ctrl+D", "Reading", "_Edit in full", "edit meter, range, uncertainty and note of the reading", EditReading),
-        new(Key.Delete, "Del", "Reading", "De_lete", "remove the reading of the row", Delete),
+        new(Key.D.WithCtrl, "Ctrl+D", "Reading", "_Edit in full", "edit meter, range, uncertainty and note of the reading; in the parts view: the part", () => InView(EditReading, EditPart)),
+        new(null, "Enter", "Part", "_Edit", "", EditPart),
+        new(null, "F6", "Part", "_Add", "", AddPart),
+        new(null, "Del", "Part", "_Remove", "", RemovePart),
+        new(Key.Delete, "Del", "Reading", "De_lete", "remove the reading of the row; in the parts view: the part", () => InView(Delete, RemovePart)),
         new(Key.G.WithCtrl, "Ctrl+G", "Reading", "_Guided order", "guided order on or off: after Enter the cursor goes to the suggested next reading", ToggleGuided),
         new(Key.O.WithCtrl, "Ctrl+O", "View", "S_ort", "sort: as the board, worst first, as entered", () => Look(s => s with { Order = (RowOrder)(((int)s.Order + 1) % 3) })),
         new(Key.F.WithCtrl, "Ctrl+F", "View", "_Flagged only", "only flagged readings, or all", () => Look(s => s with { OnlyFlagged = !s.OnlyFlagged })),
         new(Key.B.WithCtrl, "Ctrl+B", "Board", "_Next of the file", "the next board of a readings file with several", () => Look(s => s.NextBoard())),
-        new(Key.S.WithCtrl, "Ctrl+S", "Board", "_Save readings", "put the entries into the readings file", () => Save(null)),
+        new(Key.S.WithCtrl, "Ctrl+S", "Board", "_Save", "put entries into the readings file, changed parts into the board file", () => Save(null)),
         new(Key.W.WithCtrl, "Ctrl+W", "Board", "Save _as", "save the readings under another name and go on there", SaveAs),
-        new(Key.L.WithCtrl, "Ctrl+L", "Board", "_Import readings", "readings from another file, seen before they are taken", Import),
-        new(Key.E.WithCtrl, "Ctrl+E", "Board", "_Export check", "the check as CSV or JSON", Export),
+        new(Key.T.WithCtrl, "Ctrl+T", "Board", "_Take from a file", "readings from another file, seen before they are taken", Import),
+        new(Key.E.WithCtrl, "Ctrl+E", "Board", "_Export check", "the check as a picture (PNG, SVG), a report (HTML), CSV or JSON", Export),
         new(Key.P.WithCtrl, "Ctrl+P", "Board", "_Open another", "another board", () => Leave(ShowStart)),
+        new(Key.Z.WithCtrl, "Ctrl+Z", "Board", "To the s_hell", "suspend: back to the shell until \"fg\"", Suspend),
         new(Key.Q.WithCtrl, "Ctrl+Q", "Board", "_Quit", "quit; entries not saved are offered again at the next start", () => Leave(() => App?.RequestStop())),
     ];
 
     private MenuBar MakeMenu()
     {
         var bar = new MenuBar(
-            from heading in (string[])["Board", "Reading", "View", "Help"]
+            from heading in (string[])["Board", "Reading", "Part", "View", "Help"]
             select new MenuBarItem("_" + heading, commands.Where(c => c.Menu == heading).Select(c => new MenuItem(c.Label, c.KeyName, () => c.Run()))));
         bar.SetScheme(palette.Scheme());
         bar.Key = Key.F9;
@@ -59,6 +63,12 @@ internal sealed partial class BenchScreen
         return bar;
     }
 
+    private void InView(Action readings, Action parts)
+    {
+        if (view == ScreenView.Parts) parts();
+        else readings();
+    }
+
     private void OpenMenu()
     {
         menu.SetFocus();
@@ -74,6 +84,22 @@ internal sealed partial class BenchScreen
         if (bench is null && command.KeyName is not ("Ctrl+Q" or "F1" or "F8")) return true;
         command.Run();
         return true;
+    }
+
+    /// <summary>Hands the terminal to the shell until the user brings the program back; then everything is drawn anew.</summary>
+    private void Suspend()
+    {
+        if (OperatingSystem.IsWindows()) Say("There is no shell to go back to here.", Tone.Doubt);
+        else App?.Driver?.Suspend();
+        DrawAnew();
+    }
+
+    /// <summary>Draws every cell again: what the terminal shows is no longer what was drawn last.</summary>
+    public void DrawAnew()
+    {
+        App?.Driver?.ClearContents();
+        SetNeedsLayout();
+        App?.LayoutAndDraw(true);
     }
 
     private void ReturnFocus()
@@ -96,6 +122,7 @@ internal sealed partial class BenchScreen
         else if (key == Key.PageDown) MoveCursor(10);
         else if (key == Key.PageUp) MoveCursor(-10);
         else if (key == Key.Enter && view == ScreenView.Readings) Commit(false);
+        else if (key == Key.Enter && view == ScreenView.Parts) EditPart();
         else if (key == Key.Tab || key == Key.Tab.WithShift) ToggleDetail();
         else if (key == Key.Esc) ClearEntry();
         else return view != ScreenView.Readings && !key.IsCtrl && !key.IsAlt && key.AsRune.Value >= ' ';
@@ -181,7 +208,7 @@ internal sealed partial class BenchScreen
         var taken = b.Session.Row?.Reading;
         if (!asRepeat) b.Look(s => s.Move(1));
         var unit = row.Quantity.Unit();
-        Say(taken is null ? "" : $"{row.Name(b.Session.Bench.Board)} = {Words.Number(taken.Value, unit)}{(taken.Repeats > 1 ? $", mean of {taken.Repeats}" : "")}. Ctrl+Z undoes it.");
+        Say(taken is null ? "" : $"{row.Name(b.Session.Bench.Board)} = {Words.Number(taken.Value, unit)}{(taken.Repeats > 1 ? $", mean of {taken.Repeats}" : "")}. Ctrl+U undoes it.");
         SetNeedsLayout();
     }
 
@@ -195,9 +222,9 @@ internal sealed partial class BenchScreen
     private void Delete()
     {
         if (bench is not { } b) return;
-        if (view != ScreenView.Readings || b.Session.Row?.Reading is null) Say("Nothing was read in this row.", Tone.Doubt);
+        if (b.Session.Row?.Reading is null) Say("Nothing was read in this row.", Tone.Doubt);
         else if (b.Enter((s, _) => s.Delete()) is { } refused) Say(refused, Tone.Bad);
-        else Say("Removed; Ctrl+Z brings it back.");
+        else Say("Removed; Ctrl+U brings it back.");
     }
 
     private void ToggleGuided()
@@ -256,7 +283,7 @@ internal sealed partial class BenchScreen
     {
         if (refused is not null) return refused;
         Close();
-        Say("Taken. Ctrl+Z undoes it.");
+        Say("Taken. Ctrl+U undoes it.");
         return null;
     }
 

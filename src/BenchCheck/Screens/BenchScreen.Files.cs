@@ -122,11 +122,11 @@ internal sealed partial class BenchScreen
         ], ShowStart));
     }
 
-    private void OfferLeft(Workbench b, JournalContent left)
+    private void OfferLeft(Workbench b, LeftWork left)
     {
-        var when = left.Time is { } t ? t.ToLocalTime().ToString(" 'the last at' yyyy-MM-dd HH:mm", CultureInfo.InvariantCulture) : "";
-        var count = left.Sets.Sum(s => s.Readings.Length);
-        var text = $"An earlier session ended before its {left.Entries} {(left.Entries == 1 ? "entry was" : "entries were")} saved,{when}; {count} readings in all.";
+        var board = left.Board is null ? "" : $" Parts of {Path.GetFileName(b.BoardPath)} were changed.";
+        var text = left.Readings is not { } entries ? $"An earlier session ended before its changes were saved.{board}"
+            : $"An earlier session ended before its {entries.Entries} {(entries.Entries == 1 ? "entry was" : "entries were")} saved{When(entries.Time)}; {entries.Sets.Sum(s => s.Readings.Length)} readings in all.{board}";
         Put(new ChoicePanel(palette, "Entries were left unsaved", w => [.. ScreenLine.Paragraph(text, w)],
         [
             new Choice("Take them back", "go on where it ended", () =>
@@ -134,7 +134,7 @@ internal sealed partial class BenchScreen
                 Close();
                 Say(b.TakeLeft() ?? "Taken back; Ctrl+S puts them into the file.", Tone.Doubt);
             }),
-            new Choice("Leave them", "begin with the file as it is; the entries are kept beside it as .journal.declined", () =>
+            new Choice("Leave them", "begin with the files as they are; what was entered is kept beside them as .journal.declined", () =>
             {
                 b.SetLeftAside();
                 Close();
@@ -142,24 +142,31 @@ internal sealed partial class BenchScreen
         ], null));
     }
 
-    /// <summary>Saves; where the file was changed meanwhile, asks first.</summary>
+    private static string When(DateTimeOffset? time) => time is { } t ? t.ToLocalTime().ToString("', the last at' yyyy-MM-dd HH:mm", CultureInfo.InvariantCulture) : "";
+
+    /// <summary>Saves; where a file was changed meanwhile, asks first.</summary>
     /// <param name="then">what follows a save that succeeded</param>
     private void Save(Action? then)
     {
         if (bench is not { } b) return;
         try
         {
+            var isBoard = b.Session.IsBoardDirty;
+            var isReadings = b.Session.AreReadingsDirty || !isBoard;
             switch (b.Save())
             {
-                case SaveOutcome.Saved:
+                case (SaveOutcome.Saved, _):
                     saysChanged = false;
                     Close();
-                    Say($"Saved to {b.ReadingsPath}.");
+                    Say($"Saved to {(isBoard && isReadings ? $"{b.ReadingsPath} and {Path.GetFileName(b.BoardPath)}" : isBoard ? b.BoardPath : b.ReadingsPath)}.");
                     then?.Invoke();
                     break;
-                case SaveOutcome.HeldElsewhere:
+                case (SaveOutcome.HeldElsewhere, _):
                     Close();
                     Say("Another screen has the readings file open; Ctrl+W saves under another name.", Tone.Bad);
+                    break;
+                case (_, true):
+                    AskAboutBoard(b);
                     break;
                 default:
                     AskAboutChange(b);
@@ -201,67 +208,20 @@ internal sealed partial class BenchScreen
             }, Close));
     }
 
-    private void Export()
-    {
-        if (bench is not { } b) return;
-        if (b.Session is not { IsChecked: true, Result: { } result })
-        {
-            Say("The check is still running: export when it is done.", Tone.Doubt);
-            return;
-        }
-
-        var path = Path.ChangeExtension(b.ReadingsPath, null) + "-check.csv";
-        Put(new FormPanel(palette, "Export the check", [new("file", path, ReadingsExport.Endings)], values =>
-        {
-            var file = values[0].Trim();
-            if (ReadingsExport.Write(result, file) is { } refused) return refused;
-            Close();
-            Say($"Written to {file}.");
-            return null;
-        }, Close));
-    }
-
-    private void Import()
-    {
-        if (bench is not { } b) return;
-        Put(new FormPanel(palette, "Import readings", [new("file", Path.GetDirectoryName(b.ReadingsPath) + Path.DirectorySeparatorChar, "a CSV file; nothing is taken before you have seen it")], values =>
-        {
-            var preview = ImportPreview.Of(values[0].Trim(), b.Session.Bench);
-            if (!preview.IsUsable) return preview.Problems.FirstOrDefault(p => p.IsError)?.ToString() ?? "no readings in this file";
-            ShowPreview(b, preview);
-            return null;
-        }, Close));
-    }
-
-    private void ShowPreview(Workbench b, ImportPreview preview)
-    {
-        var bad = preview.Problems.Count(p => p.IsError);
-        Put(new ChoicePanel(palette, $"Import from {Path.GetFileName(preview.Path)}", w => [.. preview.Lines(b.Session, w).Take(Math.Max(4, Viewport.Height - 9))],
-        [
-            new Choice("Take nothing", "", Close),
-            new Choice(bad == 0 ? "Take them" : "Take the readings understood", "one change; Ctrl+Z undoes it", () =>
-            {
-                Close();
-                var refused = b.Enter((s, _) => preview.Into(s));
-                Say(refused ?? "Taken. Ctrl+Z undoes it.", refused is null ? Tone.Plain : Tone.Bad);
-            }),
-        ], Close));
-    }
-
     /// <summary>Leaves the board; asks when entries are not in the file.</summary>
     private void Leave(Action then)
     {
-        if (bench is not { IsOurs: true, Session.IsDirty: true } b)
+        if (bench is not { Session.IsDirty: true } b)
         {
             then();
             return;
         }
 
-        Put(new ChoicePanel(palette, "Entries are not yet in the readings file", w => [.. ScreenLine.Paragraph(b.ReadingsPath, w, Tone.Dim)],
+        Put(new ChoicePanel(palette, "Changes are not yet saved", w => [.. ScreenLine.Paragraph(b.Session.AreReadingsDirty ? b.ReadingsPath : "", w, Tone.Dim), .. ScreenLine.Paragraph(b.Session.IsBoardDirty ? b.BoardPath : "", w, Tone.Dim)],
         [
             new Choice("Save and leave", "", () => Save(then)),
-            new Choice("Leave, keep the entries", "they are offered again at the next start", then),
-            new Choice("Leave, drop the entries", "the file stays as it is", () =>
+            new Choice("Leave, keep the changes", "they are offered again at the next start", then),
+            new Choice("Leave, drop the changes", "the files stay as they are", () =>
             {
                 b.Abandon();
                 then();

@@ -55,6 +55,7 @@ internal sealed partial class BenchScreen : Runnable
         table.Wheeled += MoveCursor;
         below.Clicked += line => { if (view == ScreenView.Readings && !showsDetail && line > 0) Look(s => s.NextSuspect()); };
         SubViewLayout += (_, _) => Arrange();
+        SubViewsLaidOut += (_, _) => Render();
     }
 
     /// <summary>The board on the bench; null while none is open.</summary>
@@ -104,7 +105,12 @@ internal sealed partial class BenchScreen : Runnable
         var at = session.Row?.Place.Name(session.Bench.Board) ?? session.Cursor.At;
         prompt.Lines =
         [
-            view == ScreenView.Readings ? ScreenLine.Of($"{at}, {session.Condition}:", Tone.Strong) : ScreenLine.Empty,
+            view switch
+            {
+                ScreenView.Readings => ScreenLine.Of($"{at}, {session.Condition}:", Tone.Strong),
+                ScreenView.Parts => ScreenLine.Of("Enter edit   F6 add   Del remove   Ctrl+U undo   Esc back to the readings", Tone.Dim),
+                _ => ScreenLine.Of("Up Down choose   F5 next condition   Ctrl+E export   Esc back to the readings", Tone.Dim),
+            },
             ScreenLine.Of(message.Text, message.Tone),
         ];
         entry.Visible = view == ScreenView.Readings;
@@ -140,7 +146,6 @@ internal sealed partial class BenchScreen : Runnable
         y = Put(third, 2 * part, y, hasThree ? width - 2 * part : 0, panes);
         Put(foot, 0, height - 1, width, 1);
         if (panel is { } p) Put(p, 0, 1, width, Math.Max(1, height - 2));
-        Render();
 
         static int Put(View view, int x, int y, int width, int height)
         {
@@ -155,11 +160,11 @@ internal sealed partial class BenchScreen : Runnable
     private int RowsWanted() => bench is not { } b ? 0 : view switch
     {
         ScreenView.Parts => PartsPane.Rows(b.Session).Length + 1,
-        ScreenView.Plot => (b.Session.Result?.Readings.Length ?? 0) + 4,
+        ScreenView.Plot => PlotPane.Height(b.Session),
         _ => Math.Max(b.Session.Rows.Length, 1) + 1,
     };
 
-    private static string FootKeys() => "F1 help  F2 readings  F3 parts  F4 plot  F8 cautions  F9 menu  Ctrl+Q quit";
+    private static string FootKeys() => "F1 help  F2 readings  F3 parts  F4 plot  F8 cautions  F9 menu  ^L log  ^Q quit";
 
     private void Put(Panel next)
     {

@@ -2,21 +2,28 @@ using System.Collections.Immutable;
 using BenchCheck.Core.Checking;
 using BenchCheck.Core.Metering;
 using BenchCheck.Core.Quantities;
+using BenchCheck.Files;
 
 namespace BenchCheck.Screens;
 
 /// <summary>Everything the bench screen shows, as one immutable value; each command of the user makes a new one.</summary>
 internal sealed record BenchSession
 {
-    private ImmutableStack<ImmutableArray<ReadingSet>> undo = ImmutableStack<ImmutableArray<ReadingSet>>.Empty;
-    private ImmutableStack<ImmutableArray<ReadingSet>> redo = ImmutableStack<ImmutableArray<ReadingSet>>.Empty;
+    private ImmutableStack<Content> undo = ImmutableStack<Content>.Empty;
+    private ImmutableStack<Content> redo = ImmutableStack<Content>.Empty;
+    private Content content;
+    private Content saved;
 
-    private BenchSession(Bench bench, ImmutableArray<ReadingSet> sets, Place cursor) => (Bench, Sets, Cursor) = (bench, sets, cursor);
+    private BenchSession(Content content, Place cursor) => (this.content, saved, Cursor) = (content, content, cursor);
 
-    public Bench Bench { get; init; }
+    /// <summary>The board file as it stands here.</summary>
+    public BoardText Board => content.Board;
+
+    /// <summary>What <see cref="Board"/> describes.</summary>
+    public Bench Bench => content.Bench;
 
     /// <summary>The boards of the readings file; at least one.</summary>
-    public ImmutableArray<ReadingSet> Sets { get; private init; }
+    public ImmutableArray<ReadingSet> Sets => content.Sets;
 
     /// <summary>Which of <see cref="Sets"/> is on the bench.</summary>
     public int Active { get; private init; }
@@ -36,8 +43,6 @@ internal sealed record BenchSession
     /// <summary>Counts the changes of the readings; a check belongs to one version.</summary>
     public long Version { get; private init; }
 
-    public long SavedVersion { get; private init; }
-
     public CheckResult? Result { get; private init; }
 
     /// <summary>False while the check of the present readings is running.</summary>
@@ -47,9 +52,14 @@ internal sealed record BenchSession
     public string? Failure { get; private init; }
 
     /// <summary>What a healthy board shows at every node; null until it is known.</summary>
-    public Prediction? Prediction { get; init; }
+    public Prediction? Prediction { get; private init; }
 
-    public bool IsDirty => Version != SavedVersion;
+    /// <summary>True while readings or parts are not as in their files.</summary>
+    public bool IsDirty => AreReadingsDirty || IsBoardDirty;
+
+    public bool AreReadingsDirty => Sets != saved.Sets;
+
+    public bool IsBoardDirty => Board.Text != saved.Board.Text;
 
     public bool CanUndo => !undo.IsEmpty;
 
@@ -73,12 +83,12 @@ internal sealed record BenchSession
         }
     }
 
-    public static BenchSession Begin(Bench bench, ImmutableArray<ReadingSet> sets)
+    public static BenchSession Begin(BoardText board, Bench bench, ImmutableArray<ReadingSet> sets)
     {
         ArgumentNullException.ThrowIfNull(bench);
         if (sets.IsDefaultOrEmpty) sets = [new ReadingSet(null, [])];
         var condition = sets[0].Readings.FirstOrDefault()?.Condition ?? bench.Board.Conditions[0].Name;
-        var session = new BenchSession(bench, sets, new Place(condition, ReadingQuantity.Voltage, "", null));
+        var session = new BenchSession(new Content(board, bench, sets), new Place(condition, ReadingQuantity.Voltage, "", null));
         return session.ToFirstRow();
     }
 
@@ -115,18 +125,27 @@ internal sealed record BenchSession
     /// <summary>Removes the reading at the cursor.</summary>
     public BenchSession Delete() => Row?.Reading is { } old ? Changed(Readings with { Readings = Readings.Readings.Remove(old) }) : this;
 
-    public BenchSession Undo() => undo.IsEmpty ? this : this with { undo = undo.Pop(out var sets), redo = redo.Push(Sets), Sets = sets, Version = Version + 1, IsChecked = false };
+    public BenchSession Undo() => undo.IsEmpty ? this : (With(undo.Peek()) with { undo = undo.Pop(), redo = redo.Push(content) }).InSight();
 
-    public BenchSession Redo() => redo.IsEmpty ? this : this with { redo = redo.Pop(out var sets), undo = undo.Push(Sets), Sets = sets, Version = Version + 1, IsChecked = false };
+    public BenchSession Redo() => redo.IsEmpty ? this : (With(redo.Peek()) with { redo = redo.Pop(), undo = undo.Push(content) }).InSight();
 
     /// <summary>Takes readings from elsewhere (an import, a recovery, a merge) as one change that can be undone.</summary>
     public BenchSession Replace(ImmutableArray<ReadingSet> sets)
     {
         if (sets.IsDefaultOrEmpty) sets = [new ReadingSet(null, [])];
-        return this with { Sets = sets, Active = Math.Min(Active, sets.Length - 1), undo = undo.Push(Sets), redo = ImmutableStack<ImmutableArray<ReadingSet>>.Empty, Version = Version + 1, IsChecked = false };
+        return Changed(content with { Sets = sets }) with { Active = Math.Min(Active, sets.Length - 1) };
     }
 
-    public BenchSession Saved() => this with { SavedVersion = Version };
+    /// <summary>Takes another version of the board, in which every reading keeps its place, as one change that can be undone.</summary>
+    public BenchSession WithBoard(BoardText board, Bench bench) => Changed(content with { Board = board, Bench = bench }).InSight();
+
+    public BenchSession SavedReadings() => this with { saved = saved with { Sets = Sets } };
+
+    /// <param name="board">the text that is on disk now</param>
+    public BenchSession SavedBoard(BoardText board) => this with { saved = saved with { Board = board } };
+
+    /// <summary>What a healthy board shows; one of another version of the board changes nothing.</summary>
+    public BenchSession Predicted(Bench bench, Prediction prediction) => ReferenceEquals(bench, Bench) ? this with { Prediction = prediction } : this;
 
     /// <summary>The result of a check; one of older readings changes nothing.</summary>
     public BenchSession Checked(long version, CheckResult result, bool isComplete)
@@ -170,7 +189,7 @@ internal sealed record BenchSession
 
     /// <summary>The next board of the file in turn.</summary>
     public BenchSession NextBoard() =>
-        Sets.Length == 1 ? this : (this with { Active = (Active + 1) % Sets.Length, Version = Version + 1, SavedVersion = IsDirty ? SavedVersion : Version + 1, Result = null, IsChecked = false }).ToFirstRow();
+        Sets.Length == 1 ? this : (this with { Active = (Active + 1) % Sets.Length, Version = Version + 1, Result = null, IsChecked = false }).ToFirstRow();
 
     /// <summary>Chooses the next suspect in turn, none after the last.</summary>
     public BenchSession NextSuspect()
@@ -198,8 +217,27 @@ internal sealed record BenchSession
         return old with { Value = together.Mean, Repeats = together.Count, RepeatUncertainty = together.Uncertainty, Time = one.Time };
     }
 
-    private BenchSession Changed(ReadingSet set) => this with
+    private BenchSession Changed(ReadingSet set) => Changed(content with { Sets = Sets.SetItem(Active, set) });
+
+    private BenchSession Changed(Content next) => With(next) with { undo = undo.Push(content), redo = ImmutableStack<Content>.Empty };
+
+    private BenchSession With(Content next)
     {
-        Sets = Sets.SetItem(Active, set), undo = undo.Push(Sets), redo = ImmutableStack<ImmutableArray<ReadingSet>>.Empty, Version = Version + 1, IsChecked = false,
-    };
+        var isSameBoard = ReferenceEquals(next.Bench, Bench);
+        return this with
+        {
+            content = next, Active = Math.Min(Active, next.Sets.Length - 1), Version = Version + 1, IsChecked = false,
+            Prediction = isSameBoard ? Prediction : null, Result = isSameBoard ? Result : null, Suspect = isSameBoard ? Suspect : null,
+        };
+    }
+
+    /// <summary>The cursor where the board still has a row.</summary>
+    private BenchSession InSight()
+    {
+        if (Bench.Board.FindCondition(Condition) is null) return (this with { Cursor = Cursor with { Condition = Bench.Board.Conditions[0].Name } }).ToFirstRow();
+        return Row is null ? ToFirstRow() : this;
+    }
+
+    /// <summary>What is undone and saved: the board and its readings.</summary>
+    private sealed record Content(BoardText Board, Bench Bench, ImmutableArray<ReadingSet> Sets);
 }

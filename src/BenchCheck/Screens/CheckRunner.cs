@@ -8,7 +8,7 @@ namespace BenchCheck.Screens;
 /// <summary>What the background has to say.</summary>
 internal abstract record CheckReport
 {
-    internal sealed record Predicted(Prediction Prediction) : CheckReport;
+    internal sealed record Predicted(Bench Bench, Prediction Prediction) : CheckReport;
 
     /// <param name="IsComplete">false for the comparison alone, before the faults are searched</param>
     internal sealed record Checked(long Version, CheckResult Result, bool IsComplete) : CheckReport;
@@ -24,24 +24,24 @@ internal sealed class CheckRunner : IDisposable
     private readonly AutoResetEvent wake = new(false);
     private readonly Action<CheckReport> report;
     private readonly Thread thread;
-    private (long Version, ReadingSet Readings, CancellationTokenSource Cancel)? waiting;
+    private Job? waiting;
     private CancellationTokenSource? running;
     private volatile bool isEnding;
 
-    public CheckRunner(Bench bench, CheckSettings settings, Action<CheckReport> report)
+    public CheckRunner(CheckSettings settings, Action<CheckReport> report)
     {
         this.report = report;
-        thread = new Thread(() => Work(bench, settings)) { IsBackground = true, Name = "check" };
+        thread = new Thread(() => Work(settings)) { IsBackground = true, Name = "check" };
         thread.Start();
     }
 
-    public void Post(long version, ReadingSet readings)
+    public void Post(long version, Bench bench, ReadingSet readings)
     {
         lock (gate)
         {
             running?.Cancel();
             waiting?.Cancel.Dispose();
-            waiting = (version, readings, new CancellationTokenSource());
+            waiting = new Job(version, bench, readings, new CancellationTokenSource());
         }
 
         wake.Set();
@@ -55,16 +55,14 @@ internal sealed class CheckRunner : IDisposable
         if (thread.Join(TimeSpan.FromSeconds(5))) wake.Dispose();
     }
 
-    private void Work(Bench bench, CheckSettings settings)
+    private void Work(CheckSettings settings)
     {
-        var quick = new Reconciliation(bench, settings with { FindFaults = false });
-        var whole = new Reconciliation(bench, settings with { FindFaults = true });
-        Guarded(0, () => report(new CheckReport.Predicted(Predictor.Predict(bench, settings))));
+        Reconciliation? reconciliation = null;
         while (true)
         {
             wake.WaitOne();
             if (isEnding) return;
-            (long Version, ReadingSet Readings, CancellationTokenSource Cancel) job;
+            Job job;
             lock (gate)
             {
                 if (waiting is not { } next) continue;
@@ -73,10 +71,16 @@ internal sealed class CheckRunner : IDisposable
                 waiting = null;
             }
 
+            if (!ReferenceEquals(reconciliation?.Bench, job.Bench))
+            {
+                reconciliation = new Reconciliation(job.Bench, settings with { FindFaults = true });
+                Guarded(job.Version, () => report(new CheckReport.Predicted(job.Bench, Predictor.Predict(job.Bench, settings))));
+            }
+
             Guarded(job.Version, () =>
             {
-                report(new CheckReport.Checked(job.Version, quick.Run(job.Readings, job.Cancel.Token), false));
-                report(new CheckReport.Checked(job.Version, whole.Run(job.Readings, job.Cancel.Token), true));
+                var result = reconciliation.Run(job.Readings, compared => report(new CheckReport.Checked(job.Version, compared, false)), job.Cancel.Token);
+                report(new CheckReport.Checked(job.Version, result, true));
             });
             lock (gate) running = null;
             job.Cancel.Dispose();
@@ -104,4 +108,6 @@ internal sealed class CheckRunner : IDisposable
         }
 #pragma warning restore CA1031
     }
+
+    private sealed record Job(long Version, Bench Bench, ReadingSet Readings, CancellationTokenSource Cancel);
 }

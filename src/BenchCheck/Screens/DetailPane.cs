@@ -36,7 +36,7 @@ internal static class DetailPane
         if (row.Result is { } r)
         {
             yield return ($"Measured {Words.Number(r.Reading.Value, unit)}; nominal parts give {Words.Number(r.Predicted, unit)} on this meter; tolerances allow "
-                + $"{EngineeringNotation.Range(r.BandLow, r.BandHigh, unit, 4)}.", Tone.Plain);
+                + $"{Words.Band(r.BandLow, r.BandHigh, unit)}.", Tone.Plain);
             var (word, tone) = Words.Of(r.Verdict);
             yield return ($"Difference {Words.Signed(r.Difference, unit)}, En {Words.En(r.En)}: {word.TrimEnd('!', '?', ' ')}. After the fit the board gives {Words.Number(r.Fitted, unit)}"
                 + (double.IsFinite(r.NormalisedResidual) ? $", {Words.En(r.NormalisedResidual)} standard deviations from the reading." : "."), tone);
@@ -47,7 +47,7 @@ internal static class DetailPane
         }
         else if (row.Expected is { } e)
         {
-            yield return ($"Not read yet. A healthy board shows {Words.Number(e.Value, unit)}; tolerances allow {EngineeringNotation.Range(e.Low, e.High, unit, 4)}.", Tone.Plain);
+            yield return ($"Not read yet. A healthy board shows {Words.Number(e.Value, unit)}; tolerances allow {Words.Band(e.Low, e.High, unit)}.", Tone.Plain);
         }
         else
         {

@@ -7,29 +7,27 @@ namespace BenchCheck.Screens;
 /// <summary>A field of a form.</summary>
 internal sealed record FormField(string Label, string Value, string Hint);
 
-/// <summary>Fields to fill in; nothing is taken until all of them are right.</summary>
+/// <summary>Fields to fill in, a line each; nothing is taken until all of them are right.</summary>
 internal sealed class FormPanel : Panel
 {
-    private const int LabelWidth = 14;
+    private const int FirstLine = 2;
     private readonly ImmutableArray<FormField> fields;
     private readonly ImmutableArray<EntryField> entries;
     private readonly Func<ImmutableArray<string>, string?> take;
     private readonly Action closed;
+    private readonly int labelWidth;
     private string? problem;
+    private int first;
 
     /// <param name="take">takes the values; null, or what is wrong with them</param>
     public FormPanel(Palette palette, string title, ImmutableArray<FormField> fields, Func<ImmutableArray<string>, string?> take, Action closed) : base(palette, title)
     {
         (this.fields, this.take, this.closed) = (fields, take, closed);
-        entries =
-        [
-            .. fields.Select((f, i) => new EntryField(palette, Press)
-            {
-                X = LabelWidth + 2, Y = 2 + 2 * i, Width = Dim.Fill(2), Height = 1, Text = f.Value,
-            }),
-        ];
+        labelWidth = fields.Max(f => f.Label.Length);
+        entries = [.. fields.Select(f => new EntryField(palette, Press) { Height = 1, Text = f.Value })];
         foreach (var entry in entries)
         {
+            entry.HasFocusChanged += (_, _) => Show();
             Add(entry);
         }
     }
@@ -41,17 +39,29 @@ internal sealed class FormPanel : Panel
 
     public override void Show()
     {
-        var lines = ImmutableArray.CreateBuilder<ScreenLine>();
-        lines.Add(ScreenLine.Of(Heading, Tone.Strong));
-        lines.Add(ScreenLine.Empty);
-        foreach (var field in fields)
+        var width = Math.Max(20, Viewport.Width - 1);
+        var at = Math.Max(0, entries.IndexOf(entries.FirstOrDefault(e => e.HasFocus)!));
+        ImmutableArray<ScreenLine> below =
+        [
+            ScreenLine.Empty, .. ScreenLine.Paragraph(fields[at].Hint, width, Tone.Dim, fields[at].Hint.Length == 0 ? "" : $"{fields[at].Label}: "),
+            .. problem is null ? [] : ScreenLine.Paragraph(problem, width, Tone.Bad, "! "),
+        ];
+        var room = Math.Clamp(Viewport.Height - FirstLine - below.Length, 1, fields.Length);
+        first = Math.Clamp(Math.Clamp(first, at - room + 1, at), 0, fields.Length - room);
+        var more = room < fields.Length ? $"  (fields {first + 1} to {first + room} of {fields.Length})" : "";
+        Body.Lines =
+        [
+            ScreenLine.Of(Heading + more, Tone.Strong), ScreenLine.Empty,
+            .. fields.Skip(first).Take(room).Select((f, i) => ScreenLine.Cells(new Cell(first + i == at ? ">" : " ", 1), new Cell(f.Label, labelWidth, first + i == at ? Tone.Strong : Tone.Plain))),
+            .. below,
+        ];
+        for (var i = 0; i < entries.Length; i++)
         {
-            lines.Add(ScreenLine.Cells(new Cell(field.Label, LabelWidth, Tone.Plain, true)));
-            lines.Add(new ScreenLine([new Piece(new string(' ', LabelWidth + 2), Tone.Plain), .. ScreenLine.Of(field.Hint, Tone.Dim).Pieces]));
+            entries[i].X = labelWidth + 3;
+            entries[i].Y = FirstLine + i - first;
+            entries[i].Width = Math.Max(1, width - labelWidth - 3);
+            entries[i].Visible = i >= first && i < first + room;
         }
-
-        if (problem is not null) lines.AddRange(ScreenLine.Paragraph(problem, Math.Max(20, Viewport.Width - 2), Tone.Bad, "! "));
-        Body.Lines = lines.ToImmutable();
     }
 
     public override bool Press(Key key)
@@ -62,7 +72,7 @@ internal sealed class FormPanel : Panel
         else if (key == Key.Enter)
         {
             problem = take([.. entries.Select(e => e.Text)]);
-            Show();
+            if (problem is not null) Show();
         }
         else return false;
         return true;
@@ -76,8 +86,10 @@ internal sealed class FormPanel : Panel
 
     private void Go(int field)
     {
+        entries[field].Visible = true;
         entries[field].SetFocus();
         entries[field].ClearAllSelection();
         entries[field].InsertionPoint = entries[field].Text.Length;
+        Show();
     }
 }

@@ -9,12 +9,13 @@ internal static class HeadLines
     public static ImmutableArray<ScreenLine> Of(Workbench bench, int width)
     {
         var session = bench.Session;
-        var saved = !bench.IsOurs ? "look only: open in another screen" : session.IsDirty ? "entries not yet in the file (Ctrl+S)" : "saved";
+        var saved = !bench.IsOurs ? "look only: open in another screen" : session.IsDirty ? "not yet saved (Ctrl+S)" : "saved";
         var serial = session.Readings.Serial is { } s ? $", serial {s}" : "";
         var boards = session.Sets.Length > 1 ? string.Create(CultureInfo.InvariantCulture, $" ({session.Active + 1} of {session.Sets.Length}, Ctrl+B next)") : "";
         var filter = session.OnlyFlagged ? "  only flagged" : "";
         var order = session.Order switch { RowOrder.Worst => "  worst first", RowOrder.Entered => "  as entered", _ => "" };
-        var right = $"{Path.GetFileName(bench.ReadingsPath)}: {saved}";
+        var files = session.IsBoardDirty ? Path.GetFileName(bench.BoardPath) + (session.AreReadingsDirty ? $", {Path.GetFileName(bench.ReadingsPath)}" : "") : Path.GetFileName(bench.ReadingsPath);
+        var right = $"{files}: {saved}";
         var left = $"{session.Bench.Board.Title}{serial}{boards}{filter}{order}";
         var room = Math.Max(10, width - right.Length - 1);
         var top = ScreenLine.Cells(new Cell(left, room, Tone.Strong), new Cell(right, width - room - 1, session.IsDirty || !bench.IsOurs ? Tone.Doubt : Tone.Dim));

@@ -13,11 +13,18 @@ internal static class HelpText
         ("Enter", "take the value: it is on the disk, and the board is checked anew"),
         ("Up Down", "the row that the next value goes to; PgUp, PgDn by ten; a click does the same"),
         ("Esc", "empty the field"),
-        ("Del", "remove the reading of the row (field empty); Ctrl+Z brings it back"),
+        ("Del", "remove the reading of the row (field empty); Ctrl+U brings it back"),
         ("Tab", "below the table: suspects and next reading, or the reading in detail"),
     ];
 
-    private static readonly (string Key, string Help)[] Parts = [("Up Down", "choose a part; its pins, state and power stand below")];
+    private static readonly (string Key, string Help)[] Parts = 
+    [
+        ("Up Down", "choose a part; its pins, state and power stand below"),
+        ("Enter", "edit it: values, tolerances, the nodes of its pins; the board is checked anew at once"),
+        ("F6", "add a part"),
+        ("Del", "remove it; Ctrl+U brings it back"),
+        ("Ctrl+S", "save the board file: only what was changed in it changes, comments stay"),
+    ];
 
     private static readonly (string Key, string Help)[] Plot = [("Up Down", "scroll to the next reading")];
 

@@ -81,10 +81,10 @@ internal static class PartsPane
 
     private static ScreenLine Line(int width, string name, string kind, string listed, string estimate, string interval, string found, string power, Tone plain, Tone heat)
     {
-        var spare = Math.Max(0, width - 79) / 4;
+        var spare = Math.Clamp((width - 80) / 5, 0, 8);
         return ScreenLine.Cells(
-            new Cell(name, 5 + spare, plain), new Cell(kind, 10, plain), new Cell(listed, 14 + spare, plain, true), new Cell(estimate, 17 + spare, plain, true),
-            new Cell(interval, 14 + spare, plain, true), new Cell(found, 6, plain), new Cell(power, 7 + (spare > 2 ? 2 : 0), heat, true));
+            new Cell(name, 6 + spare, plain), new Cell(kind, 11 + spare, plain), new Cell(listed, 13 + spare, plain, true), new Cell(estimate, 16 + spare, plain, true),
+            new Cell(interval, 14 + spare, plain, true), new Cell(found, 6, plain), new Cell(power, 8, heat, true));
     }
 
     private static Estimate? EstimateOf(CheckResult? result, string condition, Part part, PartParameter parameter)

@@ -39,7 +39,7 @@ internal static class ReadingsPane
         if (row.Reading is not { } reading)
         {
             return row.Expected is { } e
-                ? Line(width, name, "-", Words.Number(e.Value, unit), hasSuspect ? "" : EngineeringNotation.Range(e.Low, e.High, unit, 4), "", "", Mark(session, row.Place), "", "", Tone.Dim, Tone.Dim)
+                ? Line(width, name, "-", Words.Number(e.Value, unit), hasSuspect ? "" : Words.Band(e.Low, e.High, unit), "", "", Mark(session, row.Place), "", "", Tone.Dim, Tone.Dim)
                 : Line(width, name, "-", "", "", "", "", Mark(session, row.Place), "", "", Tone.Dim, Tone.Dim);
         }
 
@@ -47,7 +47,7 @@ internal static class ReadingsPane
         if (row.Result is not { } r) return Line(width, name, measured, "", "", "", "", "checking", "", reading.Note ?? "", Tone.Plain, Tone.Dim);
         var (word, tone) = Words.Of(r.Verdict);
         var position = session.Result!.Readings.IndexOf(r);
-        var band = !hasSuspect ? EngineeringNotation.Range(r.BandLow, r.BandHigh, unit, 4)
+        var band = !hasSuspect ? Words.Band(r.BandLow, r.BandHigh, unit)
             : position >= 0 && position < explained.Length ? Words.Number(explained[position], unit) : "";
         return Line(width, name, measured, Words.Number(r.Predicted, unit), band, Words.Signed(r.Difference, unit), Words.En(r.En), word, Words.Number(r.Fitted, unit), reading.Note ?? "", Tone.Plain, tone);
     }

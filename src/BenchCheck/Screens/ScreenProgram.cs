@@ -36,7 +36,9 @@ internal static class ScreenProgram
         }
 
         var stopped = 0;
-        using var app = Application.Create();
+        Exception? fault = null;
+        var app = Application.Create();
+        using var ended = new ManualResetEventSlim();
         void Stop(PosixSignalContext context)
         {
             context.Cancel = true;
@@ -47,17 +49,44 @@ internal static class ScreenProgram
             _ = Task.Delay(LongestGoodbye).ContinueWith(_ => Environment.Exit(stopped), TaskScheduler.Default);
         }
 
+        // A fault on another thread: the screen's own thread, which alone can give the terminal back in order, gets a moment to do so.
+        void EndAfterFault(object _, UnhandledExceptionEventArgs unhandled)
+        {
+            fault = unhandled.ExceptionObject as Exception;
+            app.Invoke(() => app.RequestStop());
+            if (!ended.Wait(LongestGoodbye)) app.Dispose();
+            if (fault is not null) SayFault(fault, error);
+            Environment.Exit(ExitCode.Fault);
+        }
+
+        AppDomain.CurrentDomain.UnhandledException += EndAfterFault;
         using var terminate = PosixSignalRegistration.Create(PosixSignal.SIGTERM, Stop);
         using var hangUp = PosixSignalRegistration.Create(PosixSignal.SIGHUP, Stop);
         using var interrupt = PosixSignalRegistration.Create(PosixSignal.SIGINT, Stop);
-        app.Init();
-        FreeKeys(app);
-        app.Driver!.Force16Colors = true;
-        using var screen = new BenchScreen(UserFolder.Usual(), TimeProvider.System, Palette.ForEnvironment());
-        screen.Initialized += (_, _) => screen.Begin(board, readings);
-        app.Run(screen);
+        try
+        {
+            app.Init();
+            FreeKeys(app);
+            app.Driver!.Force16Colors = true;
+            using var screen = new BenchScreen(UserFolder.Usual(), TimeProvider.System, Palette.ForEnvironment());
+            using var resumed = OperatingSystem.IsWindows() ? null : PosixSignalRegistration.Create(PosixSignal.SIGCONT, _ => app.Invoke(screen.DrawAnew));
+            screen.Initialized += (_, _) => screen.Begin(board, readings);
+            app.Run(screen);
+        }
+        finally
+        {
+            app.Dispose();
+            ended.Set();
+        }
+
+        // The thread of the fault says what it was and ends the program.
+        if (fault is not null) Thread.Sleep(LongestGoodbye);
+        AppDomain.CurrentDomain.UnhandledException -= EndAfterFault;
         return stopped;
     }
+
+    private static void SayFault(Exception fault, TextWriter error) => error.WriteLine(
+        $"A fault of the program, not of your files: {fault.GetType().Name}: {Printable.Text(fault.Message)}. Entries are kept and offered at the next start.");
 
     /// <summary>Takes from the library the keys that mean something here: leaving, suspending, redrawing.</summary>
     public static void FreeKeys(IApplication app)

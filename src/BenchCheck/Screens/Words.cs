@@ -21,9 +21,17 @@ internal static class Words
         _ => ("DISAGREES !", Tone.Bad),
     };
 
-    public static string Number(double value, Unit unit) => EngineeringNotation.Format(value, unit);
+    /// <summary>Below this no bench meter shows anything: leakage through junctions that are off.</summary>
+    private const double LeastVolts = 1e-6;
 
-    public static string Signed(double value, Unit unit) => (value >= 0 ? "+" : "") + EngineeringNotation.Format(value, unit, 3);
+    public static string Number(double value, Unit unit) => EngineeringNotation.Format(Shown(value, unit), unit);
+
+    public static string Signed(double value, Unit unit) => (value >= 0 ? "+" : "") + EngineeringNotation.Format(Shown(value, unit), unit, 3);
+
+    public static string Band(double low, double high, Unit unit) => EngineeringNotation.Range(Shown(low, unit), Shown(high, unit), unit, 4);
+
+    /// <summary>Nothing is written as nothing, whatever the last digits of the equations say.</summary>
+    private static double Shown(double value, Unit unit) => unit == Unit.Volt && Math.Abs(value) < LeastVolts ? 0 : value;
 
     public static string En(double value) => value.ToString(Math.Abs(value) < 100 ? "+0.0;-0.0;0.0" : "+0;-0;0", CultureInfo.InvariantCulture);
 

@@ -15,26 +15,27 @@ internal sealed record Opening(Workbench? Workbench, ImmutableArray<FileProblem>
 
 /// <summary>One board on the bench: its session, its files, its check in the background. Every effect of the screen but drawing is here.</summary>
 /// <remarks>Used from one thread; <see cref="Reported"/> is raised on the background thread and its report handed back by <see cref="Take"/>.</remarks>
-internal sealed class Workbench : IDisposable
+internal sealed partial class Workbench : IDisposable
 {
     /// <summary>Most boards of one readings file that can be worked on here; more are a matter for a batch.</summary>
     public const int MostBoards = 50;
 
     private readonly TimeProvider clock;
     private CheckRunner? runner;
+    private readonly BoardDocument board;
     private ReadingsDocument document;
 
-    private Workbench(string boardPath, Bench bench, ReadingsDocument document, ImmutableArray<ReadingSet> sets, ImmutableArray<FileProblem> warnings, TimeProvider clock)
+    private Workbench(BoardDocument board, Bench bench, ReadingsDocument document, ImmutableArray<ReadingSet> sets, ImmutableArray<FileProblem> warnings, TimeProvider clock)
     {
-        (BoardPath, this.document, Warnings, this.clock) = (boardPath, document, warnings, clock);
-        Session = BenchSession.Begin(bench, sets);
-        Left = document.IsOurs ? ReadingsJournal.Read(document.Path, bench) : null;
+        (this.board, this.document, Warnings, this.clock) = (board, document, warnings, clock);
+        Session = BenchSession.Begin(board.AsRead, bench, sets);
+        Left = LeftWork.Find(board.Path, document, bench);
     }
 
     /// <summary>Raised on the background thread.</summary>
     public event Action<CheckReport>? Reported;
 
-    public string BoardPath { get; }
+    public string BoardPath => board.Path;
 
     public string ReadingsPath => document.Path;
 
@@ -43,7 +44,7 @@ internal sealed class Workbench : IDisposable
     public ImmutableArray<FileProblem> Warnings { get; }
 
     /// <summary>Entries that an earlier run left unsaved; until they are taken or set aside nothing else is entered.</summary>
-    public JournalContent? Left { get; private set; }
+    public LeftWork? Left { get; private set; }
 
     /// <summary>False while another screen has the readings file: look, but do not enter.</summary>
     public bool IsOurs => document.IsOurs;
@@ -71,7 +72,7 @@ internal sealed class Workbench : IDisposable
 
         try
         {
-            return new Opening(new Workbench(Path.GetFullPath(boardPath), bench, ReadingsDocument.Open(readings, sets), sets, problems, clock), problems);
+            return new Opening(new Workbench(BoardDocument.Open(boardPath), bench, ReadingsDocument.Open(readings, sets), sets, problems, clock), problems);
         }
         catch (Exception failure) when (IsFileFailure(failure))
         {
@@ -82,8 +83,8 @@ internal sealed class Workbench : IDisposable
     /// <summary>Starts checking; reports begin to come.</summary>
     public void Start()
     {
-        runner = new CheckRunner(Session.Bench, CheckSettings.Default, r => Reported?.Invoke(r));
-        runner.Post(Session.Version, Session.Readings);
+        runner = new CheckRunner(CheckSettings.Default, r => Reported?.Invoke(r));
+        Check();
     }
 
     /// <summary>Takes a report of the background; true when a complete check of the present readings came with it.</summary>
@@ -91,7 +92,7 @@ internal sealed class Workbench : IDisposable
     {
         Session = report switch
         {
-            CheckReport.Predicted p => Session with { Prediction = p.Prediction },
+            CheckReport.Predicted p => Session.Predicted(p.Bench, p.Prediction),
             CheckReport.Checked c => Session.Checked(c.Version, c.Result, c.IsComplete),
             CheckReport.Failed f => Session.Failed(f.Version, f.Reason),
             _ => Session,
@@ -104,7 +105,7 @@ internal sealed class Workbench : IDisposable
     {
         var before = Session.Version;
         Session = command(Session);
-        if (Session.Version != before) runner?.Post(Session.Version, Session.Readings);
+        if (Session.Version != before) Check();
     }
 
     /// <summary>A command that changes the readings: on the disk first, then in the session. Null, or why it was refused.</summary>
@@ -122,15 +123,16 @@ internal sealed class Workbench : IDisposable
 
         try
         {
-            document.Record(next.Value.Sets, now);
+            if (next.Value.Board != Session.Board) board.Record(next.Value.Board, now);
+            if (next.Value.Sets != Session.Sets) document.Record(next.Value.Sets, now);
         }
         catch (Exception failure) when (IsFileFailure(failure))
         {
-            return $"Not entered, because it could not be written beside the readings file: {failure.Message}";
+            return $"Not entered, because it could not be written beside the file: {failure.Message}";
         }
 
         Session = next.Value;
-        runner?.Post(Session.Version, Session.Readings);
+        Check();
         return null;
     }
 
@@ -138,15 +140,47 @@ internal sealed class Workbench : IDisposable
     public string? TakeLeft()
     {
         if (Left is not { } left) return null;
-        var isSameFile = left.Basis == FileFingerprint.Of(ReadingsPath);
+        if (left.Board is { } changed)
+        {
+            board.TakeUp(changed);
+            if (Enter((s, _) => s.WithBoard(changed.Text, left.Bench)) is { } refused) return refused;
+        }
+
         Left = null;
-        return Enter((s, _) => s.Replace(isSameFile ? left.Sets : Merge([], left.Sets, s.Sets).Sets));
+        if (left.Readings is not { } readings) return null;
+        var isSameFile = readings.Basis == FileFingerprint.Of(ReadingsPath);
+        return Enter((s, _) => s.Replace(isSameFile ? readings.Sets : Merge([], readings.Sets, s.Sets).Sets));
     }
 
     public void SetLeftAside()
     {
         ReadingsJournal.SetAside(ReadingsPath);
+        BoardDocument.SetAside(BoardPath);
         Left = null;
+    }
+
+    /// <summary>A command that changes the board file. Null, or why it was refused: then nothing was changed.</summary>
+    public string? EnterBoard(Func<BoardText, Parsed<BoardText>> command) => Enter((s, _) =>
+    {
+        var text = command(s.Board);
+        return text.Fault is { } fault ? fault : WithBoard(s, text.Value);
+    });
+
+    /// <summary>The session with another version of its board, when that is a board and every reading still has a place on it.</summary>
+    private Parsed<BenchSession> WithBoard(BenchSession session, BoardText text)
+    {
+        if (text.Text == session.Board.Text) return session;
+        var read = BoardFile.Parse(text.Text, Path.GetFileName(BoardPath));
+        if (read.Bench is not { } bench)
+        {
+            var problem = read.Problems.First(p => p.IsError);
+            return new TextFault(problem.Read, problem.Expected ?? "", problem.Hint);
+        }
+
+        Reading[] homeless = [.. session.Sets.SelectMany(s => s.Readings).Where(r => ReadingText.Of(r).Read(bench).Fault is not null)];
+        return homeless.Length == 0 ? session.WithBoard(text, bench) : new TextFault(
+            $"{homeless.Length} {(homeless.Length == 1 ? "reading" : "readings")} at {string.Join(", ", homeless.Select(r => Place.Of(r, session.Bench.Board).Name(session.Bench.Board)).Distinct().Take(5))} would have no place on this board",
+            "a board on which everything that was read can be read", "remove these readings first");
     }
 
     public bool HasChangedOnDisk()
@@ -161,60 +195,22 @@ internal sealed class Workbench : IDisposable
         }
     }
 
-    /// <exception cref="IOException">the file cannot be written; entries stay in the journal</exception>
-    /// <exception cref="UnauthorizedAccessException">no permission</exception>
-    public SaveOutcome Save()
+    /// <summary>Drops the journals: the user leaves without saving, or all is saved.</summary>
+    public void Abandon()
     {
-        var outcome = document.Save(Session.Sets);
-        if (outcome == SaveOutcome.Saved) Session = Session.Saved();
-        return outcome;
+        document.Abandon();
+        board.Abandon();
     }
-
-    /// <summary>Saves under another name, which must not exist, and goes on there. Null, or why not.</summary>
-    public string? SaveAs(string path)
-    {
-        try
-        {
-            var full = Path.GetFullPath(path);
-            if (File.Exists(full) || Directory.Exists(full)) return $"{full} exists already: choose another name.";
-            var other = ReadingsDocument.Open(full, []);
-            if (!other.IsOurs) return $"{full} cannot be written.";
-            if (other.Save(Session.Sets) != SaveOutcome.Saved) return $"{full} was made by somebody else in this moment.";
-            document.Abandon();
-            document.Dispose();
-            document = other;
-            Session = Session.Saved();
-            return null;
-        }
-        catch (Exception failure) when (IsFileFailure(failure) || failure is ArgumentException)
-        {
-            return failure.Message;
-        }
-    }
-
-    /// <summary>Brings the file's readings and ours together: both sides' changes kept, ours where both changed the same. A sentence that says what was done.</summary>
-    public string Reconcile()
-    {
-        var read = ReadingsFile.Read(ReadingsPath, Session.Bench);
-        if (!read.IsUsable && File.Exists(ReadingsPath)) return $"The file on disk cannot be read: {read.Problems.First(p => p.IsError)}";
-        ImmutableArray<ReadingSet> theirs = [.. read.Sets.Take(MostBoards + 1)];
-        var (sets, contested) = Merge(document.AsRead, Session.Sets, theirs);
-        if (Enter((s, _) => s.Replace(sets)) is { } refused) return refused;
-        document.Rebase(theirs);
-        return contested.IsEmpty
-            ? "Both brought together; save to put it on disk."
-            : "Both brought together. Changed on both sides, yours kept; theirs were: "
-                + string.Join(", ", contested.Select(r => $"{Place.Of(r, Session.Bench.Board).Name(Session.Bench.Board)} {Words.Number(r.Value, r.Quantity.Unit())}"));
-    }
-
-    /// <summary>Drops the journal: the user leaves without saving.</summary>
-    public void Abandon() => document.Abandon();
 
     public void Dispose()
     {
         runner?.Dispose();
+        if (!Session.IsDirty && Left is null) Abandon();
         document.Dispose();
+        board.Dispose();
     }
+
+    private void Check() => runner?.Post(Session.Version, Session.Bench, Session.Readings);
 
     public static bool IsFileFailure(Exception failure) => failure is IOException or UnauthorizedAccessException or System.Security.SecurityException or NotSupportedException;
 

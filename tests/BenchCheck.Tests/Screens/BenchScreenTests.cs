@@ -64,7 +64,7 @@ public sealed class BenchScreenTests : IDisposable
         screen.AwaitCheck();
         screen.Type("11").Press(Key.Enter);
         Assert.Contains("11.00 V", screen.Text);
-        screen.Press(Key.Z.WithCtrl);
+        screen.Press(Key.U.WithCtrl);
         Assert.DoesNotContain("11.00 V", screen.AwaitCheck());
         screen.Press(Key.Y.WithCtrl);
         Assert.Contains("11.00 V", screen.AwaitCheck());
@@ -145,7 +145,7 @@ public sealed class BenchScreenTests : IDisposable
         using var screen = new ScreenUnderTest(folder.Path, height: 60);
         screen.Press(Key.F1);
         var drawn = screen.Text;
-        foreach (var key in (string[])["F1", "F2", "F3", "F4", "F5", "F6", "F7", "F8", "F9", "Ctrl+Z", "Ctrl+Y", "Ctrl+R", "Ctrl+N", "Ctrl+D", "Del", "Ctrl+G", "Ctrl+O", "Ctrl+F", "Ctrl+S", "Ctrl+W", "Ctrl+P", "Ctrl+Q"])
+        foreach (var key in (string[])["F1", "F2", "F3", "F4", "F5", "F6", "F7", "F8", "F9", "Ctrl+U", "Ctrl+Z", "Ctrl+Y", "Ctrl+R", "Ctrl+N", "Ctrl+D", "Del", "Ctrl+G", "Ctrl+O", "Ctrl+F", "Ctrl+S", "Ctrl+W", "Ctrl+P", "Ctrl+Q"])
             Assert.Contains($"\n{key}", drawn);
     }
 
@@ -227,7 +227,7 @@ public sealed class BenchScreenTests : IDisposable
         File.WriteAllText(folder.In("other.csv"), "at,value\nVCC,12.5 V\nNOWHERE,3 V\n");
         using var screen = new ScreenUnderTest(folder.Path, width: 120, height: 40);
         screen.AwaitCheck();
-        screen.Press(Key.L.WithCtrl).Type("other.csv").Press(Key.Enter);
+        screen.Press(Key.T.WithCtrl).Type("other.csv").Press(Key.Enter);
         var drawn = screen.Text;
         Assert.Contains("1 readings understood, 1 rows or columns not", drawn);
         Assert.Contains("NOWHERE", drawn);
@@ -235,7 +235,7 @@ public sealed class BenchScreenTests : IDisposable
         Assert.False(screen.Screen.Workbench!.Session.IsDirty);
         screen.Type("2");
         Assert.Contains("12.50 V", screen.AwaitCheck());
-        screen.Press(Key.Z.WithCtrl);
+        screen.Press(Key.U.WithCtrl);
         Assert.Contains("12.16 V", screen.AwaitCheck());
     }
 

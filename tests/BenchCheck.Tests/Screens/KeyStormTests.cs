@@ -11,7 +11,7 @@ public sealed class KeyStormTests
     [
         Key.Enter, Key.Esc, Key.Tab, Key.Tab.WithShift, Key.CursorUp, Key.CursorDown, Key.CursorLeft, Key.CursorRight, Key.PageUp, Key.PageDown, Key.Home, Key.End, Key.Delete, Key.Backspace,
         Key.F1, Key.F2, Key.F3, Key.F4, Key.F5, Key.F6, Key.F7, Key.F8, Key.F9, Key.Space,
-        Key.Z.WithCtrl, Key.Y.WithCtrl, Key.R.WithCtrl, Key.N.WithCtrl, Key.D.WithCtrl, Key.G.WithCtrl, Key.O.WithCtrl, Key.F.WithCtrl, Key.B.WithCtrl, Key.S.WithCtrl,
+        Key.U.WithCtrl, Key.Y.WithCtrl, Key.R.WithCtrl, Key.N.WithCtrl, Key.D.WithCtrl, Key.G.WithCtrl, Key.O.WithCtrl, Key.F.WithCtrl, Key.B.WithCtrl, Key.S.WithCtrl, Key.L.WithCtrl, Key.T.WithCtrl,
         Key.A.WithCtrl, Key.X.WithCtrl, Key.C.WithCtrl, Key.V.WithCtrl, Key.K.WithCtrl, Key.B.WithAlt, Key.R.WithAlt,
     ];
 

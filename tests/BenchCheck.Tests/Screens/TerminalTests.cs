@@ -26,6 +26,11 @@ public sealed partial class TerminalTests : IDisposable
         terminal.Await("DISAGREES !");
         terminal.Press("F4");
         terminal.Await("measured in its band");
+        terminal.Press("C-e");
+        terminal.Await("Export the check");
+        terminal.Press("Enter");
+        terminal.Await("Written to");
+        Assert.Equal([0x89, .. "PNG"u8], File.ReadAllBytes(folder.In("fan-stage-check.png"))[..4]);
         terminal.Press("F2", "C-s");
         terminal.Await("Saved to");
         Assert.Contains("11.2", File.ReadAllText(folder.In("fan-stage.csv")), StringComparison.Ordinal);
@@ -48,7 +53,49 @@ public sealed partial class TerminalTests : IDisposable
         using (var kill = Process.Start("sh", ["-c", $"kill -{signal} $(cat '{folder.In("pid")}')"])) kill.WaitForExit();
         AssertRestored(terminal, exit);
         using var left = Workbench.Open(folder.In("fan-stage.toml"), null, false, TimeProvider.System).Workbench!;
-        Assert.Equal(11.5, left.Left!.Sets[0].Readings[0].Value);
+        Assert.Equal(11.5, left.Left!.Readings!.Sets[0].Readings[0].Value);
+    }
+
+    [Fact]
+    public void After_a_fault_that_nobody_catches_the_terminal_comes_back_and_entries_are_kept()
+    {
+        using var terminal = new TerminalSession(folder, "exec sh", 160);
+        terminal.Type($"export DOTNET_STARTUP_HOOKS='{typeof(TerminalTests).Assembly.Location}' BENCHCHECK_CRASH_WHEN='{folder.In("crash")}'");
+        terminal.Press("Enter");
+        Begin(terminal, "open fan-stage.toml");
+        terminal.Await("AGREES");
+        terminal.Type("11.5");
+        terminal.Press("Enter");
+        terminal.Await("VCC = 11.50 V");
+        File.WriteAllText(folder.In("crash"), "");
+        AssertRestored(terminal, 3);
+        Assert.Contains("thrown on purpose", terminal.Screen);
+        using var left = Workbench.Open(folder.In("fan-stage.toml"), null, false, TimeProvider.System).Workbench!;
+        Assert.Equal(11.5, left.Left!.Readings!.Sets[0].Readings[0].Value);
+    }
+
+    [Fact]
+    public void Suspended_the_shell_has_the_terminal_and_fg_draws_the_screen_anew()
+    {
+        using var terminal = new TerminalSession(folder, "exec bash --norc");
+        terminal.Type("$BENCHCHECK open fan-stage.toml");
+        terminal.Press("Enter");
+        terminal.Await("I have read this");
+        terminal.Press("Enter");
+        terminal.Await("AGREES");
+        terminal.Press("C-z");
+        terminal.Await("Stopped");
+        Assert.Equal("0", terminal.AlternateScreen);
+        Assert.Equal("0", terminal.MouseReports);
+        terminal.Type("echo back again");
+        terminal.Press("Enter");
+        terminal.Await(s => s.Split("back again").Length == 3, "an echoing shell");
+        terminal.Type("fg");
+        terminal.Press("Enter");
+        terminal.Await("AGREES");
+        terminal.Type("11.5");
+        terminal.Press("Enter");
+        terminal.Await("VCC = 11.50 V");
     }
 
     [Fact]
@@ -108,7 +155,7 @@ public sealed partial class TerminalTests : IDisposable
             var entered = Shown().Match(shown) is { Success: true } m ? double.Parse(m.Groups[1].Value, CultureInfo.InvariantCulture) : 0;
             using var left = Workbench.Open(folder.In("fan-stage.toml"), null, false, TimeProvider.System).Workbench!;
             Assert.True(left.IsOurs, "the lock of a killed program must not hold");
-            var onDisk = left.Left?.Sets[0].Readings[0].Value ?? throw new InvalidOperationException($"round {round}: nothing kept; the screen showed\n{shown}");
+            var onDisk = left.Left?.Readings?.Sets[0].Readings[0].Value ?? throw new InvalidOperationException($"round {round}: nothing kept; the screen showed\n{shown}");
             Assert.True(onDisk >= entered - 1e-9, $"round {round}: the screen showed {entered} V, the journal holds {onDisk} V");
             kept = (int)Math.Round((onDisk - 10) * 100);
         }

@@ -62,9 +62,9 @@ public sealed class WorkbenchTests : IDisposable
         using var bench = Open();
         bench.Enter((s, t) => s.Type("11.5", false, t));
         File.WriteAllText(folder.In("mist-valve.csv"), File.ReadAllText(folder.In("mist-valve.csv")).Replace("2.081", "2.099", StringComparison.Ordinal));
-        Assert.Equal(SaveOutcome.ChangedOnDisk, bench.Save());
+        Assert.Equal((SaveOutcome.ChangedOnDisk, false), bench.Save());
         bench.Reconcile();
-        Assert.Equal(SaveOutcome.Saved, bench.Save());
+        Assert.Equal(SaveOutcome.Saved, bench.Save().Outcome);
         Assert.Equal([11.5, 2.099], ReadingsFile.Read(bench.ReadingsPath, bench.Session.Bench).Sets.Single().Readings.Take(2).Select(r => r.Value));
     }
 
