@@ -41,6 +41,9 @@ public static class PartKeys
             : found == Diode.Zener ? [new("breakdown", "6.2 V 5%", true), drop, at]
             : found == Transistor.Npn || found == Transistor.Pnp
                 ? [new("gain", "100..300", false), drop, new("saturation", "0.12 V 50%", false), new("output_resistance", "50k 50%", false), at]
+            : found == Mosfet.NChannel || found == Mosfet.PChannel
+                ? [new("on_resistance", "0.1 50%", false), new("threshold", "1.5 V 30%", false), new("transconductance", "0.2 50%, in siemens", false)]
+            : found == Regulator.PartKind ? [Value("5 V 4%"), new("drop_out", "2 V 20%", false), new("idle_current", "5 mA 50%", false)]
             : found == OpAmp.PartKind ? [new("gain", "100k", false), new("offset", "2 mV", false), new("headroom", "1.5 V", false)]
             : found == Capacitor.PartKind ? [Value("10 uF 20%")]
             : found == Inductor.PartKind ? [Value("10 mH 10%"), new("resistance", "12 10%, of the winding", false)]

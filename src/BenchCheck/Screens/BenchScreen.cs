@@ -111,7 +111,7 @@ internal sealed partial class BenchScreen : Runnable
                 ScreenView.Parts => ScreenLine.Of("Enter edit   F6 add   Del remove   Ctrl+U undo   Esc back to the readings", Tone.Dim),
                 _ => ScreenLine.Of("Up Down choose   F5 next condition   Ctrl+E export   Esc back to the readings", Tone.Dim),
             },
-            ScreenLine.Of(message.Text, message.Tone),
+            message.Text.Length > 0 ? ScreenLine.Of(message.Text, message.Tone) : ScreenLine.Of(OutOfSight(session), Tone.Dim),
         ];
         entry.Visible = view == ScreenView.Readings;
         (table.Lines, below.Lines, beside.Lines, third.Lines) = view switch
@@ -129,7 +129,7 @@ internal sealed partial class BenchScreen : Runnable
     {
         var (width, height) = (Viewport.Width, Viewport.Height);
         var free = height - 1 - 3 - 2 - 1;
-        var rows = Math.Clamp(RowsWanted(), 2, Math.Max(2, free - Math.Clamp(height / 3, 5, 18)));
+        var rows = Math.Clamp(RowsWanted(), 2, Math.Max(2, free - (view == ScreenView.Readings ? Math.Clamp(height / 3, 5, 18) : 6)));
         var panes = Math.Max(1, free - rows);
         var y = Put(menu, 0, 0, width, 1);
         y = Put(head, 0, y, width, 3);
@@ -155,6 +155,18 @@ internal sealed partial class BenchScreen : Runnable
             view.Height = height;
             return y + height;
         }
+    }
+
+    /// <summary>Says that the table goes on where it does not fit its place.</summary>
+    private string OutOfSight(BenchSession session)
+    {
+        var (at, count) = view switch
+        {
+            ScreenView.Parts => (partCursor, PartsPane.Rows(session).Length),
+            ScreenView.Readings => (session.RowIndex, session.Rows.Length),
+            _ => (0, 0),
+        };
+        return count >= table.Frame.Height ? $"row {at + 1} of {count}" : "";
     }
 
     private int RowsWanted() => bench is not { } b ? 0 : view switch

@@ -39,7 +39,7 @@ internal static class DetailPane
                 + $"{Words.Band(r.BandLow, r.BandHigh, unit)}.", Tone.Plain);
             var (word, tone) = Words.Of(r.Verdict);
             yield return ($"Difference {Words.Signed(r.Difference, unit)}, En {Words.En(r.En)}: {word.TrimEnd('!', '?', ' ')}. After the fit the board gives {Words.Number(r.Fitted, unit)}"
-                + (double.IsFinite(r.NormalisedResidual) ? $", {Words.En(r.NormalisedResidual)} standard deviations from the reading." : "."), tone);
+                + (double.IsFinite(r.NormalisedResidual) ? $", a normalised residual of {Words.En(r.NormalisedResidual)}." : "."), tone);
         }
         else if (row.Reading is { } reading)
         {

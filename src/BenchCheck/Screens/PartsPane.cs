@@ -72,7 +72,9 @@ internal static class PartsPane
         var name = (isCursor ? "> " : "  ") + row.Part.Designator;
         var (power, heat) = row.Dissipation is { } d ? ((d.IsOver ? "!" : "") + EngineeringNotation.Format(d.Watts, Unit.Watt, 3), d.IsOver ? Tone.Bad : Tone.Plain) : ("", Tone.Plain);
         if (row.Parameter is not { } p) return Line(width, name, row.Part.Kind.Name, "", "", "", "", power, Tone.Plain, heat);
-        var listed = p.Nominal.IsUnknown ? "?" : EngineeringNotation.Range(p.Nominal.Low, p.Nominal.High, p.Kind.Unit);
+        // A supply that the condition sets has the condition's value, not that of the list.
+        var (low, high) = row.Estimate is { } found ? (found.NominalLow, found.NominalHigh) : (p.Nominal.Low, p.Nominal.High);
+        var listed = p.Nominal.IsUnknown ? "?" : EngineeringNotation.Range(low, high, p.Kind.Unit);
         return row.Estimate is { } e
             ? Line(width, name, p.Kind.Name, listed, EngineeringNotation.FormatWithUncertainty(e.Value, e.StandardUncertainty, p.Kind.Unit), EngineeringNotation.Range(e.Low, e.High, p.Kind.Unit),
                 e.Determined switch { Determination.Yes => "yes", Determination.Partly => "partly", _ => "no" }, power, e.Determined == Determination.No ? Tone.Dim : Tone.Plain, heat)
@@ -83,8 +85,8 @@ internal static class PartsPane
     {
         var spare = Math.Clamp((width - 80) / 5, 0, 8);
         return ScreenLine.Cells(
-            new Cell(name, 6 + spare, plain), new Cell(kind, 11 + spare, plain), new Cell(listed, 13 + spare, plain, true), new Cell(estimate, 16 + spare, plain, true),
-            new Cell(interval, 14 + spare, plain, true), new Cell(found, 6, plain), new Cell(power, 8, heat, true));
+            new Cell(name, 6 + spare, plain), new Cell(kind, 11 + spare, plain), new Cell(listed, 13 + spare, plain, true), new Cell(estimate, 17 + spare, plain, true),
+            new Cell(interval, 14 + spare, plain, true), new Cell(found, 6, plain), new Cell(power, 7, heat, true));
     }
 
     private static Estimate? EstimateOf(CheckResult? result, string condition, Part part, PartParameter parameter)

@@ -168,7 +168,7 @@ public sealed class BenchScreenTests : IDisposable
         screen.AwaitCheck();
         screen.Press(Key.F9);
         var drawn = screen.Text;
-        Assert.Contains("Save readings", drawn);
+        Assert.Contains("Save", drawn);
         Assert.Contains("Ctrl+S", drawn);
         screen.Press(Key.CursorRight);
         Assert.Contains("Guided order", screen.Text);
@@ -239,20 +239,28 @@ public sealed class BenchScreenTests : IDisposable
         Assert.Contains("12.16 V", screen.AwaitCheck());
     }
 
-    [Fact]
-    public void The_check_is_exported_for_programs_and_never_over_a_file()
+    [Theory]
+    [InlineData(".png", "PNG")]
+    [InlineData(".svg", "</svg>")]
+    [InlineData(".html", "R4 of another value")]
+    [InlineData(".csv", "serial,line,condition,quantity,at,")]
+    [InlineData(".json", "\"verdict\": \"disagrees\"")]
+    public void The_check_is_exported_by_the_ending_of_the_name_and_never_over_a_file(string ending, string holds)
     {
         using var screen = new ScreenUnderTest(folder.Path, width: 200);
         screen.AwaitCheck();
-        screen.Press(Key.E.WithCtrl);
-        for (var i = 0; i < 4; i++) screen.Press(Key.Backspace);
-        screen.Type(".json").Press(Key.Enter);
-        Assert.True(screen.Text.Contains($"Written to {folder.In("mist-valve-check.json")}"), screen.Text);
-        Assert.Contains("\"verdict\": \"disagrees\"", File.ReadAllText(folder.In("mist-valve-check.json")));
-        screen.Press(Key.E.WithCtrl);
-        for (var i = 0; i < 4; i++) screen.Press(Key.Backspace);
-        screen.Type(".json").Press(Key.Enter);
+        Export();
+        screen.Await($"Written to {folder.In("mist-valve-check" + ending)}");
+        Assert.Contains(holds, File.ReadAllText(folder.In("mist-valve-check" + ending)));
+        Export();
         Assert.Contains("there is a file of that name already", screen.Text);
+
+        void Export()
+        {
+            screen.Press(Key.E.WithCtrl);
+            for (var i = 0; i < 4; i++) screen.Press(Key.Backspace);
+            screen.Type(ending).Press(Key.Enter);
+        }
     }
 
     [Fact]

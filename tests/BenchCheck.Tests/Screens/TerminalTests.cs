@@ -25,7 +25,7 @@ public sealed partial class TerminalTests : IDisposable
         terminal.Press("Enter");
         terminal.Await("DISAGREES !");
         terminal.Press("F4");
-        terminal.Await("measured in its band");
+        terminal.Await("measured against its band");
         terminal.Press("C-e");
         terminal.Await("Export the check");
         terminal.Press("Enter");
