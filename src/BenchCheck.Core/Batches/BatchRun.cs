@@ -21,7 +21,7 @@ public sealed class BatchRun(Bench bench, CheckSettings settings, FaultRates? ra
     /// <param name="finish">makes of each board's result what is wanted; on the worker's thread</param>
     /// <param name="fail">makes of a board that cannot be checked, with the reason, what is wanted</param>
     /// <exception cref="OperationCanceledException">cancelled; what was given before is whole</exception>
-    public IEnumerable<T> Run<T>(IEnumerable<ReadingSet> boards, Func<CheckResult, T> finish, Func<ReadingSet, string, T> fail, CancellationToken cancel = default)
+    public IEnumerable<T> Run<T>(IEnumerable<ReadingSet> boards, Func<CheckResult, BoardFit, T> finish, Func<ReadingSet, string, T> fail, CancellationToken cancel = default)
     {
         ArgumentNullException.ThrowIfNull(boards);
         // A scheduler and not a semaphore: boards that wait for a processor must not hold a thread.
@@ -44,12 +44,13 @@ public sealed class BatchRun(Bench bench, CheckSettings settings, FaultRates? ra
         }
     }
 
-    private T One<T>(ReadingSet board, Func<CheckResult, T> finish, Func<ReadingSet, string, T> fail, CancellationToken cancel)
+    private T One<T>(ReadingSet board, Func<CheckResult, BoardFit, T> finish, Func<ReadingSet, string, T> fail, CancellationToken cancel)
     {
         if (!idle.TryTake(out var reconciliation)) reconciliation = new Reconciliation(bench, settings, rates);
         try
         {
-            return finish(reconciliation.Run(board, cancel));
+            var (result, fit) = reconciliation.Fit(board, null, cancel);
+            return finish(result, fit);
         }
         catch (NoOperatingStateException failure)
         {

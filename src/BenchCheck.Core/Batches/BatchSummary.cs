@@ -37,7 +37,7 @@ public sealed class BatchSummary
         [.. estimateOrder.Select(e => (e.Name, e.Unit, estimates[e.Name].Build())).Where(e => e.Item3 is not null).Select(e => (e.Name, e.Unit, e.Item3!))];
 
     /// <summary>The values behind <see cref="Estimates"/>, in the order of the boards.</summary>
-    public IEnumerable<double> ValuesOf(string name) => estimates[name].Values;
+    public IReadOnlyList<BatchValue> PointsOf(string name) => estimates[name].Kept;
 
     public void Add(BoardOutcome board)
     {

@@ -45,6 +45,5 @@ public readonly record struct PlaceOutcome(string Place, ReadingVerdict Verdict)
 public readonly record struct EstimateOutcome(string Name, Unit Unit, double Value, double StandardUncertainty)
 {
     internal static EstimateOutcome Of(Estimate estimate) => new(
-        estimate.Condition is null ? $"{estimate.Part} {estimate.Kind.Name}" : $"{estimate.Part} {estimate.Kind.Name} ({estimate.Condition})", estimate.Kind.Unit,
-        estimate.Value, estimate.StandardUncertainty);
+        BatchParameter.NameOf(estimate.Part, estimate.Kind, estimate.Condition), estimate.Kind.Unit, estimate.Value, estimate.StandardUncertainty);
 }

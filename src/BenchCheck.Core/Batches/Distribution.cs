@@ -10,13 +10,13 @@ namespace BenchCheck.Core.Batches;
 /// <param name="Outliers">values beyond the outer fences, three interquartile ranges outside the quartiles (NIST/SEMATECH handbook, 7.1.6), farthest first</param>
 /// <param name="IsSampled">percentiles and outliers come from a random sample of the values, for there were too many to keep</param>
 public sealed record Distribution(
-    long Count, double Mean, double Spread, double Least, double Greatest, ImmutableArray<double> Percentiles, ImmutableArray<Outlier> Outliers, bool IsSampled)
+    long Count, double Mean, double Spread, double Least, double Greatest, ImmutableArray<double> Percentiles, ImmutableArray<BatchValue> Outliers, bool IsSampled)
 {
     public double Median => Percentiles[2];
 }
 
-/// <summary>A value far from all others, and the board it is of.</summary>
-public readonly record struct Outlier(string? Serial, double Value);
+/// <summary>A value of one board.</summary>
+public readonly record struct BatchValue(string? Serial, double Value);
 
 /// <summary>Collects the values of one number over a batch; memory stays bounded.</summary>
 public sealed class DistributionBuilder
@@ -29,11 +29,11 @@ public sealed class DistributionBuilder
     private static readonly double[] Levels = [0.05, 0.25, 0.5, 0.75, 0.95];
 
     private readonly RunningStatistics running = new();
-    private readonly List<Outlier> kept = [];
+    private readonly List<BatchValue> kept = [];
     private readonly Random draw = new(1);
 
     /// <summary>The values kept, in the order in which they came until there were too many.</summary>
-    public IEnumerable<double> Values => kept.Select(k => k.Value);
+    public IReadOnlyList<BatchValue> Kept => kept;
 
     /// <summary>Takes a value in; one that is not finite is left out.</summary>
     public void Add(string? serial, double value)
@@ -42,12 +42,12 @@ public sealed class DistributionBuilder
         running.Push(value);
         if (kept.Count < MostKept)
         {
-            kept.Add(new Outlier(serial, value));
+            kept.Add(new BatchValue(serial, value));
             return;
         }
 
         var place = draw.NextInt64(running.Count);
-        if (place < MostKept) kept[(int)place] = new Outlier(serial, value);
+        if (place < MostKept) kept[(int)place] = new BatchValue(serial, value);
     }
 
     /// <summary>The distribution of what came so far; null when nothing did.</summary>

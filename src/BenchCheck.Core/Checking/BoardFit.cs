@@ -13,6 +13,7 @@ public sealed class BoardFit
     private BoardFit(BoardModel model, ReadingPlan plan, EvidenceFit fit)
     {
         Model = model;
+        Plan = plan;
         var p = model.Parameters.Length;
         Phi = fit.Phi.ToArray();
         Stacked = new StackedFit(model, plan.Measured, plan.Noise);
@@ -36,6 +37,8 @@ public sealed class BoardFit
     }
 
     public BoardModel Model { get; }
+
+    public ReadingPlan Plan { get; }
 
     /// <summary>Minimum of Σ (y − f)²/u² + Σ (φ − φ₀)²/σ².</summary>
     public double ChiSquared => 2 * Summary.Cost;

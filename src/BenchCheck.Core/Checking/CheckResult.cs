@@ -93,7 +93,14 @@ public sealed record UnmeasuredNode(string Condition, string Node, double Predic
 /// <param name="High">upper end; positive infinity when the readings and the parts list set none</param>
 public sealed record Estimate(
     string Part, ParameterKind Kind, string? Condition, double Nominal, double NominalLow, double NominalHigh, double Value,
-    double StandardUncertainty, double Low, double High, Determination Determined);
+    double StandardUncertainty, double Low, double High, Determination Determined)
+{
+    /// <summary>The same with the board's lot in place of the parts list; null when no lot was taken.</summary>
+    public LotEstimate? WithLot { get; init; }
+}
+
+/// <summary>An estimate that a lot of like boards has tightened, in the unit of the parameter.</summary>
+public sealed record LotEstimate(double Value, double StandardUncertainty);
 
 public sealed record CorrelatedPair(Estimate First, Estimate Second, double Correlation);
 

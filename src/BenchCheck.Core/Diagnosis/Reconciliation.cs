@@ -22,7 +22,7 @@ public sealed class Reconciliation
     private const int MostKept = 16;
 
     private readonly NetworkSolver solver;
-    private readonly EvidenceFit fit = new();
+    private readonly EvidenceFit workspace = new();
     private readonly FaultRates rates;
     private readonly List<Compiled> compiled = [];
 
@@ -42,23 +42,28 @@ public sealed class Reconciliation
 
     /// <exception cref="NoOperatingStateException">no state of the devices satisfies the equations</exception>
     /// <exception cref="OperationCanceledException">cancelled</exception>
-    public CheckResult Run(ReadingSet readings, CancellationToken cancel = default) => Run(readings, null, cancel);
+    public CheckResult Run(ReadingSet readings, CancellationToken cancel = default) => Fit(readings, null, cancel).Result;
 
     /// <param name="compared">told the result without suspects and next readings as soon as it is there, when these are still to be sought</param>
     /// <exception cref="NoOperatingStateException">no state of the devices satisfies the equations</exception>
     /// <exception cref="OperationCanceledException">cancelled</exception>
-    public CheckResult Run(ReadingSet readings, Action<CheckResult>? compared, CancellationToken cancel = default)
+    public CheckResult Run(ReadingSet readings, Action<CheckResult>? compared, CancellationToken cancel = default) => Fit(readings, compared, cancel).Result;
+
+    /// <summary>The result with the fit of the healthy board behind it.</summary>
+    /// <exception cref="NoOperatingStateException">no state of the devices satisfies the equations</exception>
+    /// <exception cref="OperationCanceledException">cancelled</exception>
+    public (CheckResult Result, BoardFit Fit) Fit(ReadingSet readings, Action<CheckResult>? compared = null, CancellationToken cancel = default)
     {
         ArgumentNullException.ThrowIfNull(readings);
         var plan = ReadingPlan.Of(Bench, readings);
         if (!Settings.FindFaults)
         {
             var model = new BoardModel(Bench.Board, plan.Probes, plan.HasScaleError, solver);
-            return Checker.Check(Bench, readings, plan, model, fit, Settings).Result;
+            return Checker.Check(Bench, readings, plan, model, workspace, Settings);
         }
 
         var (search, next) = CompiledFor(plan);
-        var (check, _) = Checker.Check(Bench, readings, plan, search.Healthy, fit, Settings);
+        var (check, fit) = Checker.Check(Bench, readings, plan, search.Healthy, workspace, Settings);
         compared?.Invoke(check);
         int[] lines = [.. readings.Readings.Select(r => r.Lines.IsDefaultOrEmpty ? 0 : r.Lines[0])];
         var faults = search.Find(plan.Measured, plan.Noise, lines, cancel);
@@ -72,11 +77,12 @@ public sealed class Reconciliation
         double[] sigma = [.. Enumerable.Range(0, plan.Measured.Length).Select(plan.StandardUncertainty)];
         var groups = FaultGroup.Of(posterior.Where(f => f.Probability > 1e-6), sigma);
         var words = new SuspectWords(check, plan);
-        return check with
+        var result = check with
         {
             Suspects = [.. groups.Where(g => g.Probability > LeastShown).Take(MostSuspects).Select(words.Suspect)],
             Next = next.Rank(plan, groups, cancel),
         };
+        return (result, fit);
     }
 
     /// <summary>What is compiled for the places where a board is read; those used last are kept.</summary>
@@ -84,7 +90,7 @@ public sealed class Reconciliation
     {
         var index = compiled.FindIndex(c => c.Probes.SequenceEqual(plan.Probes) && c.HasScaleError.SequenceEqual(plan.HasScaleError));
         var found = index < 0
-            ? new Compiled(plan.Probes, plan.HasScaleError, new FaultSearch(Bench.Board, plan.Probes, plan.HasScaleError, solver, rates), new NextReadings(Bench, plan.Probes, fit, solver))
+            ? new Compiled(plan.Probes, plan.HasScaleError, new FaultSearch(Bench.Board, plan.Probes, plan.HasScaleError, solver, rates), new NextReadings(Bench, plan.Probes, workspace, solver))
             : compiled[index];
         if (index >= 0) compiled.RemoveAt(index);
         else if (compiled.Count == MostKept) compiled.RemoveAt(0);

@@ -51,4 +51,19 @@ internal static class Cholesky
             LuFactor.AddScaled(b[..i], l.Slice(i * n, i), -b[i]);
         }
     }
+
+    /// <summary>A⁻¹, n×n.</summary>
+    public static double[] Inverse(ReadOnlySpan<double> l, int n)
+    {
+        var inverse = new double[n * n];
+        for (var j = 0; j < n; j++)
+        {
+            // A⁻¹ is symmetric: its rows are its columns.
+            var row = inverse.AsSpan(j * n, n);
+            row[j] = 1;
+            Solve(l, n, row);
+        }
+
+        return inverse;
+    }
 }

@@ -3,8 +3,6 @@ using System.Globalization;
 using BenchCheck.Core.Batches;
 using BenchCheck.Core.Boards;
 using BenchCheck.Core.Checking;
-using BenchCheck.Core.Equations;
-using BenchCheck.Core.Fitting;
 using BenchCheck.Core.Metering;
 
 namespace BenchCheck.Files;
@@ -23,23 +21,27 @@ public sealed class BatchCsv
 
     private static readonly string[] NoEstimate = ["", ""];
 
-    private readonly ImmutableArray<(string Name, ParameterKind Kind)> estimates;
+    private readonly ImmutableArray<BatchParameter> estimates;
+    private readonly ImmutableArray<BatchParameter> withLot;
 
-    public BatchCsv(Board board)
-    {
-        estimates =
-        [
-            .. new ParameterTable(board).Entries.Where(e => e.Kind.IsReported && FitParameter.Of(e, 0) is not null)
-                .Select(e => (e.Condition is null ? $"{e.Part.Designator} {e.Kind.Name}" : $"{e.Part.Designator} {e.Kind.Name} ({e.Condition})", e.Kind)),
-        ];
-    }
+    private BatchCsv(ImmutableArray<BatchParameter> estimates, ImmutableArray<BatchParameter> withLot) => (this.estimates, this.withLot) = (estimates, withLot);
+
+    public static BatchCsv Of(Board board) => new(BatchParameter.Of(board), []);
+
+    /// <summary>With further columns for what each estimate is together with the lot.</summary>
+    public static BatchCsv WithLot(Board board) => new(BatchParameter.Of(board), BatchParameter.Of(board));
 
     /// <summary>The header, without a line break at its end.</summary>
-    public string Header => Line([.. Fixed, .. estimates.SelectMany(e => new[] { Safe($"{e.Name} [{e.Kind.Unit.Symbol}]"), Safe($"u({e.Name})") })]);
+    public string Header => Line(
+    [
+        .. Fixed, .. estimates.SelectMany(e => new[] { Safe($"{e.Name} [{e.Kind.Unit.Symbol}]"), Safe($"u({e.Name})") }),
+        .. withLot.SelectMany(e => new[] { Safe($"{e.Name} with lot [{e.Kind.Unit.Symbol}]"), Safe($"u({e.Name} with lot)") }),
+    ]);
 
     public string Row(CheckResult result)
     {
         var outcome = BoardOutcome.Of(result);
+        var lot = result.Parameters.Where(p => p.WithLot is not null).GroupBy(p => BatchParameter.NameOf(p.Part, p.Kind, p.Condition)).ToDictionary(g => g.Key, g => g.First().WithLot!);
         var values = outcome.Estimates.GroupBy(e => e.Name).ToDictionary(g => g.Key, g => g.First());
         return Line(
         [
@@ -47,6 +49,7 @@ public sealed class BatchCsv
             Safe(outcome.Suspect ?? ""), result.Suspects is [var first, ..] ? Digits(first.Probability) : "",
             Safe(string.Join(Between, outcome.Places.Select(p => p.Place))), Places(outcome, ReadingVerdict.Out), Places(outcome, ReadingVerdict.Doubtful), "",
             .. estimates.SelectMany(e => values.TryGetValue(e.Name, out var v) ? new[] { Digits(v.Value), Digits(v.StandardUncertainty) } : NoEstimate),
+            .. withLot.SelectMany(e => lot.TryGetValue(e.Name, out var v) ? new[] { Digits(v.Value), Digits(v.StandardUncertainty) } : NoEstimate),
         ]);
     }
 
@@ -54,14 +57,14 @@ public sealed class BatchCsv
     public string FailureRow(ReadingSet board, string reason)
     {
         ArgumentNullException.ThrowIfNull(board);
-        return Line([Safe(board.Serial ?? ""), "", "", "", "", "", "", "", "", "", Safe(reason), .. estimates.SelectMany(_ => NoEstimate)]);
+        return Line([Safe(board.Serial ?? ""), "", "", "", "", "", "", "", "", "", Safe(reason), .. estimates.Concat(withLot).SelectMany(_ => NoEstimate)]);
     }
 
     /// <summary>A row read back; null when it is none of this board.</summary>
     public BoardOutcome? Outcome(string line)
     {
         using var text = new StringReader(line);
-        if (DelimitedText.Rows(text, ',').FirstOrDefault() is not { Cells: { } raw } || raw.Length != Fixed.Length + 2 * estimates.Length) return null;
+        if (DelimitedText.Rows(text, ',').FirstOrDefault() is not { Cells: { } raw } || raw.Length != Fixed.Length + 2 * (estimates.Length + withLot.Length)) return null;
         var cells = raw.Select(CellText.Restore).ToArray();
         var serial = cells[0].Length == 0 ? null : cells[0];
         if (cells[10].Length > 0) return BoardOutcome.Failed(serial, cells[10]);

@@ -103,6 +103,11 @@ public static class ResultJson
         Number(json, "low", estimate.Low);
         Number(json, "high", estimate.High);
         json.WriteString("determined", ResultWords.Of(estimate.Determined));
+        if (estimate.WithLot is not { } together) return;
+        json.WriteStartObject("withLot");
+        Number(json, "estimate", together.Value);
+        Number(json, "standardUncertainty", together.StandardUncertainty);
+        json.WriteEndObject();
     }
 
     private static void State(Utf8JsonWriter json, DeviceState state)

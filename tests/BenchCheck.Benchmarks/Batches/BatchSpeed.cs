@@ -34,7 +34,7 @@ internal static class BatchSpeed
         var clock = Stopwatch.StartNew();
         var summary = new BatchSummary();
         var run = new BatchRun(shelf.Bench, CheckSettings.Default with { FindFaults = ranks }, null, Environment.ProcessorCount);
-        foreach (var outcome in run.Run(shelf.Boards(count, 7), BoardOutcome.Of, (b, reason) => BoardOutcome.Failed(b.Serial, reason))) summary.Add(outcome);
+        foreach (var outcome in run.Run(shelf.Boards(count, 7), (result, _) => BoardOutcome.Of(result), (b, reason) => BoardOutcome.Failed(b.Serial, reason))) summary.Add(outcome);
         var seconds = clock.Elapsed.TotalSeconds;
         self.Refresh();
         var processor = (self.TotalProcessorTime - before).TotalSeconds;

@@ -34,7 +34,8 @@ public class BatchRunTests
         var boards = Shelf(40);
         var settings = CheckSettings.Default with { FindFaults = false };
         string[] Run(int workers) =>
-            [.. new BatchRun(Bench, settings, null, workers).Run(boards, Digits, (b, reason) => $"{b.Serial} {reason}", TestContext.Current.CancellationToken)];
+            [.. new BatchRun(Bench, settings, null, workers)
+                .Run(boards, (result, _) => Digits(result), (b, reason) => $"{b.Serial} {reason}", TestContext.Current.CancellationToken)];
         var one = Run(1);
         Assert.Equal(boards.Select(b => b.Serial), one.Select(r => r.Split(' ')[0]));
         Assert.Equal(one, Run(5));
@@ -50,7 +51,7 @@ public class BatchRunTests
             {
                 taken++;
                 return b;
-            }), r => r.Verdict, (_, _) => default, TestContext.Current.CancellationToken).GetEnumerator();
+            }), (r, _) => r.Verdict, (_, _) => default, TestContext.Current.CancellationToken).GetEnumerator();
         for (var i = 0; i < 3; i++) Assert.True(results.MoveNext());
         Assert.InRange(taken, 3, 40);
     }

@@ -1,6 +1,9 @@
 using BenchCheck.Core.Batches;
 using BenchCheck.Core.Boards;
+using BenchCheck.Core.Checking;
+using BenchCheck.Core.Equations;
 using BenchCheck.Core.Fitting;
+using BenchCheck.Core.Metering;
 using BenchCheck.Core.Quantities;
 using Xunit;
 
@@ -8,84 +11,71 @@ namespace BenchCheck.Core.Tests.Batches;
 
 public sealed class LotPoolTests
 {
-    private const double PriorMean = 5;
-    private const double PriorSigma = 0.4;
+    private const double Stated = 20;
+
+    private static readonly Bench Bench = new(
+        new Board(
+            "Divider", "GND", BoardOrigin.NewBuild,
+            [
+                new Resistor("R1", ["A", "GND"], Nominal.Within(1000, Tolerance.Percent(5))), new Supply("V1", ["B", "GND"], Nominal.Exactly(5)),
+                new Resistor("R2", ["B", "GND"], Nominal.Exactly(1000)),
+            ],
+            [Condition.Powered, Condition.Unpowered]),
+        [Meter.Usual], []);
 
     [Fact]
-    public void For_boards_of_equal_uncertainty_the_lot_is_the_closed_form_of_the_normal_case()
+    public void Resistances_read_with_a_poor_meter_are_tightened_by_their_lot()
     {
-        const double S = 0.1;
-        double[] y = [5.31, 5.02, 4.77, 5.18, 5.44, 4.95, 5.27, 5.09, 5.61, 4.88];
-        var lot = Pool(y, [.. y.Select(_ => S)]);
-        var mean = y.Average();
-        var tau2 = y.Sum(v => (v - mean) * (v - mean)) / y.Length - S * S;
-        Assert.True(tau2 > 0);
-        var parameter = lot.Parameters[0];
-        Assert.Equal(mean, parameter.Mean, 1e-6);
-        Assert.Equal(Math.Sqrt(tau2), parameter.Spread, 1e-5);
-        Assert.Equal(Math.Sqrt((tau2 + S * S) / y.Length), parameter.MeanUncertainty, 1e-5);
-        for (var k = 0; k < y.Length; k++)
-        {
-            Assert.Equal(mean + tau2 / (tau2 + S * S) * (y[k] - mean), lot.Boards[k].Together[0], 1e-5);
-            Assert.Equal(Math.Sqrt(tau2 * S * S / (tau2 + S * S)), lot.Boards[k].TogetherUncertainty[0], 1e-5);
-        }
+        // A lot 0.5 % high that spreads by 3 Ω; readings good to 20 Ω.
+        var draw = new Random(5);
+        var truths = Enumerable.Range(0, 200).Select(_ => 1005 + 3 * Normal(draw)).ToArray();
+        ReadingSet[] boards = [.. truths.Select(r => Board(r + Stated * Normal(draw)))];
+        var lot = new LotPool(Bench, JunctionLaw.Exponential).LotOf(new BatchRun(Bench, Settings, null, 2), boards, _ => { }, TestContext.Current.CancellationToken)!;
+        var parameter = lot.Parameters.Single(p => p.Parameter.Owner == "R1");
+        Assert.Equal(1005, parameter.Value, 3 * parameter.Scaled(parameter.MeanUncertainty));
+        Assert.InRange(parameter.Scaled(parameter.MeanUncertainty), 1, 2.5);
+        Assert.InRange(parameter.Scaled(parameter.Spread), 1, 12);
+
+        var run = new BatchRun(Bench, Settings, null, 2);
+        var estimates = run.Run(boards, (result, fit) => lot.Tighten(result, fit).Parameters.Single(p => p.Part == "R1"), (_, _) => null!, TestContext.Current.CancellationToken).ToArray();
+        Assert.InRange(estimates.Count(e => e.WithLot is null), 0, 5);
+        Assert.All(estimates.Where(e => e.WithLot is not null), e => Assert.True(e.WithLot!.StandardUncertainty < 0.6 * e.StandardUncertainty));
+        Assert.True(Error(estimates.Select(e => e.WithLot?.Value ?? e.Value)) < 0.5 * Error(estimates.Select(e => e.Value)));
+
+        double Error(IEnumerable<double> values) => values.Zip(truths, (v, t) => (v - t) * (v - t)).Sum();
     }
 
     [Fact]
-    public void For_boards_of_unequal_uncertainty_the_marginal_likelihood_stands_still_at_the_lot()
+    public void A_board_that_disagrees_is_neither_taken_into_the_lot_nor_tightened()
     {
-        double[] y = [5.31, 5.02, 4.77, 5.18, 5.44, 4.95, 5.27, 5.09, 5.61, 4.88];
-        double[] s = [0.05, 0.2, 0.1, 0.07, 0.3, 0.1, 0.02, 0.15, 0.4, 0.1];
-        var parameter = Pool(y, s).Parameters[0];
-        var (best, mu, tau) = (LogLikelihood(parameter.Mean, parameter.Spread), parameter.Mean, parameter.Spread);
-        foreach (var (m, t) in new[] { (mu + 0.01, tau), (mu - 0.01, tau), (mu, tau + 0.01), (mu, tau - 0.01) }) Assert.True(LogLikelihood(m, t) < best);
-
-        double LogLikelihood(double m, double t) => -0.5 * y.Zip(s, (v, u) => Math.Log(t * t + u * u) + (v - m) * (v - m) / (t * t + u * u)).Sum();
+        ReadingSet[] boards = [Board(1000), Board(1002), Board(998), Board(1001), Board(1500)];
+        var run = new BatchRun(Bench, Settings, null, 1);
+        var lot = new LotPool(Bench, JunctionLaw.Exponential).LotOf(run, boards, _ => { }, TestContext.Current.CancellationToken)!;
+        Assert.Equal(4, lot.Boards);
+        var tightened = run.Run(boards, (result, fit) => lot.Tighten(result, fit).Parameters.Any(p => p.WithLot is not null), (_, _) => false, TestContext.Current.CancellationToken);
+        Assert.Equal([true, true, true, true, false], tightened);
     }
 
     [Fact]
-    public void A_lot_tightens_boards_that_their_readings_leave_open_and_hardly_moves_those_they_settle()
+    public void Two_boards_are_no_lot_and_of_very_many_a_sample_is_kept()
     {
-        double[] y = [5.31, 5.02, 5.27, 5.18, 5.24, 5.15, 5.27, 5.09, 4.1];
-        double[] s = [0.02, 0.02, 0.02, 0.02, 0.02, 0.02, 0.02, 0.02, 0.6];
-        var lot = Pool(y, s);
-        Assert.Equal(y[0], lot.Boards[0].Together[0], 0.02);
-        Assert.InRange(lot.Boards[8].Together[0], 5.0, 5.2);
-        Assert.True(lot.Boards[8].TogetherUncertainty[0] < 0.5 * lot.Boards[8].AloneUncertainty[0]);
-    }
-
-    [Fact]
-    public void What_the_readings_tell_only_of_a_ratio_is_shared_between_both_parameters()
-    {
-        // Readings that see φ₁ − φ₂ alone, which is 0.1 on every board: the lot moves one up and the other down by half of it.
-        var pool = new LotPool([Parameter(), Parameter()]);
-        const double Weight = 1 / (PriorSigma * PriorSigma);
-        const double Seen = 1 / (0.01 * 0.01);
-        for (var k = 0; k < 20; k++)
-        {
-            // Precision [[w + q, −q], [−q, w + q]], inverted by hand.
-            var determinant = Weight * (Weight + 2 * Seen);
-            double[] covariance = [(Weight + Seen) / determinant, Seen / determinant, Seen / determinant, (Weight + Seen) / determinant];
-            var shift = 0.1 * Seen / (Weight + 2 * Seen);
-            Assert.True(pool.Add(null, [PriorMean + shift, PriorMean - shift], covariance));
-        }
-
+        var pool = new LotPool(Bench, JunctionLaw.Exponential);
+        for (var i = 0; i < 2; i++) pool.Add(ReadingPlan.Of(Bench, Board(1000 + i)));
+        Assert.Null(pool.Solve(TestContext.Current.CancellationToken));
+        var draw = new Random(3);
+        for (var i = 2; i < 3000; i++) pool.Add(ReadingPlan.Of(Bench, Board(1020 + 25 * Normal(draw))));
         var lot = pool.Solve(TestContext.Current.CancellationToken)!;
-        Assert.Equal(0.1, lot.Parameters[0].Mean - lot.Parameters[1].Mean, 0.002);
-        Assert.Equal(PriorMean, (lot.Parameters[0].Mean + lot.Parameters[1].Mean) / 2, 1e-6);
+        Assert.Equal(3000, lot.Boards);
+        var parameter = lot.Parameters.Single(p => p.Parameter.Owner == "R1");
+        Assert.Equal(1020, parameter.Value, 4.0);
+        // 25 Ω as read, of which 20 Ω are the meter's.
+        Assert.Equal(15, parameter.Scaled(parameter.Spread), 3.5);
     }
 
-    private static LotEstimate Pool(double[] y, double[] s)
-    {
-        var pool = new LotPool([Parameter()]);
-        for (var k = 0; k < y.Length; k++)
-        {
-            var variance = 1 / (1 / (s[k] * s[k]) + 1 / (PriorSigma * PriorSigma));
-            Assert.True(pool.Add(null, [variance * (y[k] / (s[k] * s[k]) + PriorMean / (PriorSigma * PriorSigma))], [variance]));
-        }
+    private static CheckSettings Settings => CheckSettings.Default with { FindFaults = false };
 
-        return pool.Solve(TestContext.Current.CancellationToken)!;
-    }
+    private static ReadingSet Board(double ohms) => new(
+        "x", [new Reading([], Condition.Unpowered.Name, ReadingQuantity.Resistance, "A", "GND", ohms) { StatedUncertainty = Stated }]);
 
-    private static FitParameter Parameter() => new("Q1", ParameterKind.Gain, null, Nominal.Between(100, 300), 0, true, PriorMean, PriorSigma);
+    private static double Normal(Random draw) => Math.Sqrt(-2 * Math.Log(1 - draw.NextDouble())) * Math.Cos(2 * Math.PI * draw.NextDouble());
 }

@@ -69,6 +69,51 @@ public sealed class BatchCommandTests : IDisposable
         Assert.Equal(2, await line.Run("batch", board, shelf, "--out", Path.Combine(line.Folder, "results.xls")));
     }
 
+    [Theory]
+    [InlineData("results.csv")]
+    [InlineData("results.jsonl")]
+    public async Task A_lot_stands_in_every_line_of_a_board_that_agrees_and_a_resumed_batch_finds_the_same_lot(string name)
+    {
+        var shelf = line.File("shelf.csv", Shelf(12, faulty: 5));
+        var target = Path.Combine(line.Folder, name);
+        Assert.Equal(1, await line.Run("batch", board, shelf, "--pool", "--no-suspects", "--out", target));
+        Assert.Contains("The lot, from 11 boards that agree", line.Output, StringComparison.Ordinal);
+        var lines = File.ReadAllLines(target);
+        if (name.EndsWith("csv", StringComparison.Ordinal))
+        {
+            var column = lines[0].Split(',').ToList().IndexOf("u(V1 voltage with lot)");
+            double Cell(int row, int at) => double.Parse(lines[row].Split(',')[at], CultureInfo.InvariantCulture);
+            Assert.True(Cell(1, column) < Cell(1, lines[0].Split(',').ToList().IndexOf("u(V1 voltage)")));
+            Assert.Equal("", lines[6].Split(',')[column]);
+        }
+        else
+        {
+            var supply = JsonDocument.Parse(lines[0]).RootElement.GetProperty("parameters").EnumerateArray().Single(p => p.GetProperty("part").GetString() == "V1");
+            Assert.True(supply.GetProperty("withLot").GetProperty("standardUncertainty").GetDouble() < supply.GetProperty("standardUncertainty").GetDouble());
+            Assert.DoesNotContain("withLot", lines[5], StringComparison.Ordinal);
+        }
+
+        var whole = File.ReadAllBytes(target);
+        File.WriteAllBytes(target, whole[..(whole.Length / 2)]);
+        await line.Run("batch", board, shelf, "--pool", "--no-suspects", "--out", target, "--resume");
+        Assert.Equal(whole, File.ReadAllBytes(target));
+    }
+
+    [Fact]
+    public async Task Pictures_of_a_batch_are_left_in_a_folder_under_names_that_no_part_can_steer()
+    {
+        var hostile = line.File("hostile.toml", WorkshopFiles.Board.Replace("title =", "# title =", StringComparison.Ordinal).Insert(0, "title = \"../../x <b>\"\n"));
+        var folder = Path.Combine(line.Folder, "pictures");
+        Assert.Equal(0, await line.Run("batch", hostile, line.File("shelf.csv", Shelf(9, faulty: -1)), "--no-suspects", "--plots", folder));
+        string[] names = [.. Directory.EnumerateFiles(folder).Select(f => Path.GetFileName(f)!)];
+        Assert.Contains("estimates.png", names);
+        Assert.Contains("Q1-gain-histogram.png", names);
+        Assert.Contains("Q1-gain-trend.png", names);
+        Assert.All(names, n => Assert.Matches("^[A-Za-z0-9_-]+[.]png$", n));
+        Assert.Equal(0x89, File.ReadAllBytes(Path.Combine(folder, "estimates.png"))[0]);
+        Assert.Equal(2, await line.Run("batch", hostile, line.File("shelf.csv", Shelf(9, faulty: -1)), "--no-suspects", "--plots", Path.Combine(folder, "estimates.png")));
+    }
+
     [Fact]
     public async Task A_bad_row_costs_only_itself_and_is_named()
     {

@@ -1,6 +1,5 @@
 using System.Text;
 using BenchCheck.Core.Batches;
-using BenchCheck.Core.Boards;
 using BenchCheck.Core.Checking;
 using BenchCheck.Core.Metering;
 using BenchCheck.Files;
@@ -16,10 +15,11 @@ internal sealed class BatchOutput : IDisposable
     private BatchOutput(FileStream stream, BatchCsv? csv) => (this.stream, this.csv) = (stream, csv);
 
     /// <summary>Begins a new file.</summary>
+    /// <param name="columns">of a CSV</param>
     /// <exception cref="IOException">the file is there already, cannot be made, or has another ending</exception>
-    public static BatchOutput Create(string path, Board board)
+    public static BatchOutput Create(string path, Func<BatchCsv> columns)
     {
-        var csv = CsvFor(path, board);
+        var csv = CsvFor(path, columns);
         if (File.Exists(path)) throw new IOException($"{path} is there already; --resume goes on with it, or name another file");
         var output = new BatchOutput(new FileStream(path, FileMode.CreateNew, FileAccess.ReadWrite, FileShare.Read), csv);
         if (csv is not null) output.Write(csv.Header);
@@ -28,10 +28,10 @@ internal sealed class BatchOutput : IDisposable
 
     /// <summary>Opens a file that an earlier run left, cuts off a line that it did not finish, and reads what is there.</summary>
     /// <exception cref="IOException">there is none, or it is not of this board</exception>
-    public static (BatchOutput Output, List<BoardOutcome> Done) Resume(string path, Board board)
+    public static (BatchOutput Output, List<BoardOutcome> Done) Resume(string path, Func<BatchCsv> columns)
     {
-        if (!File.Exists(path)) return (Create(path, board), []);
-        var csv = CsvFor(path, board);
+        if (!File.Exists(path)) return (Create(path, columns), []);
+        var csv = CsvFor(path, columns);
         var output = new BatchOutput(new FileStream(path, FileMode.Open, FileAccess.ReadWrite, FileShare.Read), csv);
         try
         {
@@ -60,9 +60,9 @@ internal sealed class BatchOutput : IDisposable
 
     public void Dispose() => stream.Dispose();
 
-    private static BatchCsv? CsvFor(string path, Board board) => Path.GetExtension(path).ToUpperInvariant() switch
+    private static BatchCsv? CsvFor(string path, Func<BatchCsv> columns) => Path.GetExtension(path).ToUpperInvariant() switch
     {
-        ".CSV" => new BatchCsv(board),
+        ".CSV" => columns(),
         ".JSONL" => null,
         _ => throw new IOException($"{path}: results go to a file that ends in .csv or .jsonl"),
     };
@@ -89,7 +89,7 @@ internal sealed class BatchOutput : IDisposable
             var isFirst = csv is not null;
             while (reader.ReadLine() is { } line)
             {
-                if (isFirst && line != csv!.Header) throw new IOException($"{path} was not written for this board, or by another version; name another file");
+                if (isFirst && line != csv!.Header) throw new IOException($"{path} was not written for this board with these options, or by another version; name another file");
                 if (!isFirst)
                 {
                     done.Add((csv is null ? BatchJson.Outcome(line) : csv.Outcome(line))
