@@ -23,9 +23,22 @@ public static class BoardStructure
         return
         [
             .. UntouchedReference(board), .. PartsOnOneNode(board), .. SupplyLoops(board), .. UntiedNodes(board), .. SinglePins(board),
-            .. OpAmpsWithoutFeedback(board),
+            .. OpAmpsWithoutFeedback(board), .. ShortedGenerators(board),
         ];
     }
+
+    /// <summary>True when supplies without resistance alone tie two nodes together: no signal can stand between them.</summary>
+    public static bool AreStill(Board board, string a, string b)
+    {
+        ArgumentNullException.ThrowIfNull(board);
+        var groups = new NodeGroups(board.Nodes);
+        foreach (var supply in board.Parts.Where(p => p is Supply { SourceOhms: null })) groups.Tie(supply.Nodes[0], supply.Nodes[1]);
+        return groups.AreTied(a, b);
+    }
+
+    private static IEnumerable<StructureProblem> ShortedGenerators(Board board) =>
+        board.Conditions.Where(c => c.Drive is { } d && AreStill(board, d.At, d.Against)).Select(c => new StructureProblem(
+            null, c.Drive!.At, $"the generator of condition {c.Name} is shorted: supplies hold {c.Drive.At} and {c.Drive.Against} still to small signals", true));
 
     private static IEnumerable<StructureProblem> UntouchedReference(Board board)
     {

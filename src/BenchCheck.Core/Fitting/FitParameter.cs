@@ -65,5 +65,11 @@ public sealed record FitParameter(
         : kind == ParameterKind.Drop ? 0.65
         : kind == ParameterKind.Breakdown ? 5
         : kind == ParameterKind.ReverseGain ? 2
+        : kind == ParameterKind.OutputResistance ? 50e3
+        : kind == ParameterKind.Capacitance ? 1e-6
+        : kind == ParameterKind.Inductance ? 1e-3
+        : kind == ParameterKind.Threshold ? 2
+        : kind == ParameterKind.DropOut ? 1.5
+        : kind == ParameterKind.IdleCurrent ? 5e-3
         : 0;
 }

@@ -52,12 +52,16 @@ internal sealed class ReadingCheck(BoardNames names)
         _ => null,
     };
 
-    /// <summary>Why a current gain cannot be counted; null when it can.</summary>
-    public static TextFault? Input(ReadingQuantity quantity, string? against, Condition condition) =>
-        quantity == ReadingQuantity.CurrentGain && against is null && condition.Drive is null
-            ? new TextFault("a current gain with nothing in column against", "the part or pin that carries the input current",
-                "or a drive in the condition, whose current is then meant")
+    /// <summary>Why a gain cannot be counted from there; null when it can.</summary>
+    public TextFault? Input(ReadingQuantity quantity, string? against, Condition condition)
+    {
+        if (quantity == ReadingQuantity.CurrentGain && against is null && condition.Drive is null)
+            return new TextFault("a current gain with nothing in column against", "the part or pin that carries the input current",
+                "or a drive in the condition, whose current is then meant");
+        return quantity == ReadingQuantity.Gain && BoardStructure.AreStill(names.Board, against!, names.Board.Reference)
+            ? new TextFault($"a gain counted from {against}", "a node that carries the signal", "supplies hold this one still")
             : null;
+    }
 
     /// <summary>Why a meter cannot have given the reading; null when it can, or when the uncertainty is stated.</summary>
     public static TextFault? Meter(ReadingQuantity quantity, Condition condition, Meter meter, double? uncertainty) =>

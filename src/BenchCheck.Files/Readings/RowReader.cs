@@ -117,7 +117,7 @@ internal sealed class RowReader(ReadingsHeader header, BoardNames names)
         var place = check.Place(quantity, at, against);
         if (place.Fault is { } misplaced) Faults.Add(misplaced);
         if (setting.Condition is not null && check.Condition(quantity, setting.Condition) is { } unsuited) Faults.Add(unsuited);
-        if (setting.Condition is not null && place.IsValue && ReadingCheck.Input(quantity, place.Value.Against, setting.Condition) is { } uncounted) Faults.Add(uncounted);
+        if (setting.Condition is not null && place.IsValue && check.Input(quantity, place.Value.Against, setting.Condition) is { } uncounted) Faults.Add(uncounted);
         var value = Value(valueText, quantity, unitText);
         if (Faults.Count > before || setting.Condition is null) return null;
         return new Reading(setting.Lines, setting.Condition.Name, quantity, place.Value.At, place.Value.Against, value)

@@ -3,7 +3,10 @@ using BenchCheck.Core.Quantities;
 
 namespace BenchCheck.Core.Tests.Equations;
 
-/// <summary>Linear boards drawn from a seed: connected resistors, supplies with and without resistance, current sources, the four controlled sources.</summary>
+/// <summary>
+/// Linear boards drawn from a seed: connected resistors, supplies with and without resistance, current sources, the four controlled sources, capacitors,
+/// inductors, op-amps of finite gain.
+/// </summary>
 internal sealed class LinearBoards
 {
     private readonly Random random;
@@ -41,6 +44,32 @@ internal sealed class LinearBoards
         return draw.Finish();
     }
 
+    public static Board Reactive(int seed)
+    {
+        var draw = new LinearBoards(seed);
+        draw.Reactances();
+        return draw.Finish();
+    }
+
+    public static Board ReactiveWithControlledSources(int seed)
+    {
+        var draw = new LinearBoards(seed);
+        draw.Sources();
+        draw.Reactances();
+        draw.ControlledSources();
+        return draw.Finish();
+    }
+
+    /// <summary>At rest at zero volts, so that every op-amp is in its linear range.</summary>
+    public static Board ReactiveWithOpAmps(int seed)
+    {
+        var draw = new LinearBoards(seed);
+        draw.Reactances();
+        draw.ControlledSources();
+        draw.OpAmps();
+        return draw.Finish();
+    }
+
     private Board Finish() => new("random", "0", BoardOrigin.NewBuild, [.. parts], []);
 
     private (string From, string To) Pair()
@@ -69,6 +98,35 @@ internal sealed class LinearBoards
         {
             var (plus, minus) = Pair();
             parts.Add(new CurrentSource($"I{i}", [plus, minus], Nominal.Exactly(Signed(1e-6, 1e-2))));
+        }
+    }
+
+    private void Reactances()
+    {
+        for (var i = random.Next(1, 4); i > 0; i--)
+        {
+            var (from, to) = Pair();
+            parts.Add(new Capacitor($"C{i}", [from, to], Nominal.Exactly(LogBetween(1e-9, 10e-6))));
+        }
+
+        for (var i = random.Next(3); i > 0; i--)
+        {
+            var (from, to) = Pair();
+            parts.Add(new Inductor($"L{i}", [from, to], Nominal.Exactly(LogBetween(10e-6, 0.1)), Nominal.Exactly(LogBetween(1, 100))));
+        }
+    }
+
+    private void OpAmps()
+    {
+        parts.Add(new Supply("VP", ["V+", "0"], Nominal.Exactly(15)));
+        parts.Add(new Supply("VN", ["0", "V-"], Nominal.Exactly(15)));
+        for (var i = random.Next(1, 3); i > 0; i--)
+        {
+            var output = nodes[random.Next(1, nodes.Length)];
+            if (stiff.AreTied(output, "0")) continue;
+            stiff.Tie(output, "0");
+            var (plus, minus) = Pair();
+            parts.Add(new OpAmp($"U{i}", [plus, minus, output, "V+", "V-"], Nominal.Exactly(LogBetween(10, 1e4)), Nominal.Exactly(0), 1.5));
         }
     }
 

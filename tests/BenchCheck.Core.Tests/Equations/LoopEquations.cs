@@ -1,5 +1,7 @@
+using System.Numerics;
 using BenchCheck.Core.Boards;
 using MathNet.Numerics.LinearAlgebra;
+using Row = MathNet.Numerics.LinearAlgebra.Vector<System.Numerics.Complex>;
 
 namespace BenchCheck.Core.Tests.Equations;
 
@@ -15,23 +17,29 @@ internal sealed class LoopEquations
 {
     private readonly Part[] parts;
     private readonly string reference;
+    private readonly double angular;
     private readonly Dictionary<string, (string Parent, int Branch)> tree = [];
     private readonly List<int> links = [];
     private readonly Dictionary<string, int> controlled = [];
     private readonly int[][] loop;
 
-    private LoopEquations(Board board, Random order)
+    private LoopEquations(Board board, Random order, double angular)
     {
         parts = [.. board.Parts];
+        this.angular = angular;
         reference = board.Reference;
         GrowTree(order);
         foreach (var part in parts.OfType<ControlledSource>()) controlled[part.Designator] = controlled.Count;
         loop = [.. links.Select(Loop)];
     }
 
-    /// <summary>Node voltages; null when the equations are singular.</summary>
+    /// <summary>Node voltages at rest; null when the equations are singular.</summary>
     /// <param name="order">decides the tree</param>
-    public static Dictionary<string, double>? Volts(Board board, Random order) => new LoopEquations(board, order).Solve();
+    public static Dictionary<string, double>? Volts(Board board, Random order) => Phasors(board, order, 0)?.ToDictionary(v => v.Key, v => v.Value.Real);
+
+    /// <summary>Node voltages at a frequency, every supply and current source giving its value as amplitude and zero phase; null when the equations are singular.</summary>
+    /// <param name="angular">radians a second</param>
+    public static Dictionary<string, Complex>? Phasors(Board board, Random order, double angular) => new LoopEquations(board, order, angular).Solve();
 
     private static bool GivesCurrent(Part part) => part is CurrentSource
         || (part is ControlledSource c && (ReferenceEquals(c.Kind, ControlledSource.CurrentByVoltage) || ReferenceEquals(c.Kind, ControlledSource.CurrentByCurrent)));
@@ -81,31 +89,33 @@ internal sealed class LoopEquations
     }
 
     /// <summary>Current of a branch as a row over the unknowns.</summary>
-    private Vector<double> Current(int branch)
+    private Row Current(int branch)
     {
-        var row = Vector<double>.Build.Dense(links.Count + controlled.Count);
+        var row = Row.Build.Dense(links.Count + controlled.Count);
         for (var l = 0; l < links.Count; l++) row[l] = loop[l][branch];
         return row;
     }
 
     /// <summary>Voltage of a branch that is no current source: a row over the unknowns and a constant.</summary>
-    private (Vector<double> Row, double Constant) Voltage(int branch)
+    private (Row Row, Complex Constant) Voltage(int branch)
     {
         switch (parts[branch])
         {
             case Resistor r: return (Current(branch) * r.Ohms.Value, 0);
+            case Inductor l: return (Current(branch) * new Complex(l.WindingOhms.Value, angular * l.Henries.Value), 0);
+            case Capacitor c: return (Current(branch) * new Complex(0, -1 / (angular * c.Farads.Value)), 0);
             case Supply s: return (Current(branch) * (s.SourceOhms?.Value ?? 0), s.Volts.Value);
-            case ControlledSource c:
-                var row = Vector<double>.Build.Dense(links.Count + controlled.Count);
-                row[links.Count + controlled[c.Designator]] = c.Gain.Value;
+            case ControlledSource e:
+                var row = Row.Build.Dense(links.Count + controlled.Count);
+                row[links.Count + controlled[e.Designator]] = e.Gain.Value;
                 return (row, 0);
             default: throw new NotSupportedException(parts[branch].Kind.Name);
         }
     }
 
-    private (Vector<double> Row, double Constant) Along(int[] path)
+    private (Row Row, Complex Constant) Along(int[] path)
     {
-        var (row, constant) = (Vector<double>.Build.Dense(links.Count + controlled.Count), 0.0);
+        var (row, constant) = (Row.Build.Dense(links.Count + controlled.Count), Complex.Zero);
         for (var b = 0; b < parts.Length; b++)
         {
             if (path[b] == 0) continue;
@@ -117,11 +127,11 @@ internal sealed class LoopEquations
         return (row, constant);
     }
 
-    private Dictionary<string, double>? Solve()
+    private Dictionary<string, Complex>? Solve()
     {
         var size = links.Count + controlled.Count;
-        var matrix = Matrix<double>.Build.Dense(size, size);
-        var right = Vector<double>.Build.Dense(size);
+        var matrix = Matrix<Complex>.Build.Dense(size, size);
+        var right = Row.Build.Dense(size);
         for (var l = 0; l < links.Count; l++)
         {
             // A current source's pin "plus" gives its current to the board, so the branch current into it is minus that.
@@ -158,7 +168,7 @@ internal sealed class LoopEquations
         }
 
         var solution = matrix.Solve(right);
-        if (solution.Any(x => !double.IsFinite(x))) return null;
+        if (solution.Any(x => !Complex.IsFinite(x))) return null;
         return tree.Keys.ToDictionary(node => node, node =>
         {
             var (row, constant) = Along(PathToReference(node));

@@ -40,12 +40,23 @@ public class SmallSignalConditionTests
     [InlineData("kind = \"small-signal\"\noperating_point = \"powered\"\ndrive = { value = \"1 mV\" }", "has no place")]
     [InlineData("kind = \"small-signal\"\noperating_point = \"powered\"\ndrive = { at = \"GND\" }", "against itself")]
     [InlineData("kind = \"small-signal\"\noperating_point = \"powered\"\ndrive = { at = \"IN\", value = \"-1 mV\" }", "the RMS voltage that the generator is set to")]
+    [InlineData("kind = \"small-signal\"\noperating_point = \"powered\"\ndrive = { at = \"VCC\" }", "the generator of condition signal is shorted: supplies hold VCC and GND still")]
     [InlineData("drive = { at = \"IN\" }", "kind = \"small-signal\" beside it")]
     public void What_is_wrong_with_a_small_signal_condition_is_said(string condition, string words)
     {
         var result = Read("[conditions.signal]\n" + condition);
         Assert.Null(result.Bench);
         Assert.Contains(result.Problems, p => p.ToString().Contains(words, StringComparison.Ordinal));
+    }
+
+    [Fact]
+    public void A_gain_counted_from_a_node_that_supplies_hold_still_is_refused()
+    {
+        var bench = Read("[conditions.signal]\nkind = \"small-signal\"\noperating_point = \"powered\"").Bench!;
+        var result = ReadingsFile.Parse("condition,quantity,at,against,value\nsignal,gain,C1,VCC,-180\nsignal,gain,C1,IN,-180\n", "amplifier.csv", bench, ReadingsOptions.Default);
+        var problem = Assert.Single(result.Problems);
+        Assert.Equal(2, problem.Line);
+        Assert.Contains("a gain counted from VCC", problem.ToString(), StringComparison.Ordinal);
     }
 
     private static BoardFileResult Read(string condition) => BoardFile.Parse(Parts + condition, "amplifier.toml");

@@ -86,13 +86,14 @@ public sealed class SmallSignalSolver
         Prepare(m.Base, Base);
         var weights = new Weights();
         var value = m.IsImpedance ? Impedance(m, ref weights) : Transfer(m, ref weights);
-        var isSigned = !m.IsMagnitude;
-        var size = Complex.Abs(value);
-        var shown = isSigned && value.Real < 0 ? -size : size;
+
+        // Where no signal arrives at the node that a ratio is counted from, there is none to read.
+        var magnitude = Complex.IsFinite(value) ? Complex.Abs(value) : 0;
+        var shown = !m.IsMagnitude && value.Real < 0 ? -magnitude : magnitude;
         if (gradient.IsEmpty) return shown;
         gradient.Clear();
         byCurrent.Clear();
-        if (size == 0) return shown;
+        if (magnitude == 0) return shown;
 
         // d|y| = Re(conj(y) dy) / |y|
         var phase = Complex.Conjugate(value) / shown;

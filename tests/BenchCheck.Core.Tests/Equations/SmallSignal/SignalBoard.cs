@@ -18,8 +18,12 @@ internal sealed class SignalBoard
     /// <param name="thermalVolts">kT/e that the book takes</param>
     /// <param name="hertz">null when every capacitor counts as a short</param>
     public SignalBoard(BoardSketch sketch, double thermalVolts = 0.026, double? hertz = null, Drive? drive = null, JunctionLaw law = JunctionLaw.ConstantDrop)
+        : this(sketch.Board, thermalVolts, hertz, drive, law)
     {
-        var plain = sketch.Board;
+    }
+
+    public SignalBoard(Board plain, double thermalVolts = 0.026, double? hertz = null, Drive? drive = null, JunctionLaw law = JunctionLaw.ConstantDrop)
+    {
         var signal = Condition.Powered with { Name = "signal", OperatingPoint = Condition.DefaultName, Hertz = hertz, Drive = drive };
         board = new Board(plain.Title, plain.Reference, plain.Origin, plain.Parts, [Condition.Powered, signal])
         {
@@ -44,6 +48,8 @@ internal sealed class SignalBoard
     public double OutputOhms(string at, string? against = null) => Read(ReadingQuantity.OutputResistance, at, against);
 
     public double Volts(string at, string? against = null) => Read(ReadingQuantity.Voltage, at, against);
+
+    public double Amperes(string at) => Read(ReadingQuantity.Current, at, null);
 
     /// <summary>A reading at θ and its derivatives.</summary>
     public double Read(ReadingQuantity quantity, string at, string? against, double[] parameters, double[] gradient, Meter? meter = null)

@@ -49,6 +49,15 @@ public class SmallSignalSolverTests
     }
 
     [Fact]
+    public void Where_no_signal_arrives_there_is_no_gain_to_read()
+    {
+        var board = new SignalBoard(new BoardSketch().Resistor("R1", "IN", "0", 1e3).Resistor("R2", "A", "0", 1e3).Resistor("R3", "A", "B", 1e3).Resistor("R4", "B", "0", 1e3), drive: new Drive("IN", "0", 1, 50));
+        var gradient = new double[board.Theta.Length];
+        Assert.Equal(0, board.Read(ReadingQuantity.Gain, "B", "A", board.Theta, gradient));
+        Assert.All(gradient, slope => Assert.Equal(0, slope));
+    }
+
+    [Fact]
     public void A_transistor_multiplies_its_base_current_by_its_gain()
     {
         var sketch = new BoardSketch().Supply("V1", "VCC", 12).Resistor("RB", "VCC", "B", 470e3).Resistor("RC", "VCC", "C", 3e3).Npn("Q1", "C", "B", "0", 137);
