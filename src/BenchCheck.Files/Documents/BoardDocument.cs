@@ -35,14 +35,19 @@ public sealed class BoardDocument : IDisposable
 
     public bool HasChangedOnDisk() => FileFingerprint.Of(Path) != basis;
 
-    /// <summary>Takes what is on disk now as the version that ours stands on.</summary>
+    /// <summary>Reads the file again and, when its text can be used, takes it as the version that ours stands on.</summary>
+    /// <param name="take">null when it takes the text, or why not: then nothing is changed here</param>
     /// <exception cref="IOException">the file cannot be read</exception>
-    public BoardText Reread()
+    public string? Reread(Func<BoardText, string?> take)
     {
+        ArgumentNullException.ThrowIfNull(take);
         var bytes = File.ReadAllBytes(Path);
+        var read = Decoded(bytes);
+        if (take(read.Text) is { } refused) return refused;
         basis = FileFingerprint.Of(bytes);
-        (AsRead, encoding, mark) = Decoded(bytes);
-        return AsRead;
+        (AsRead, encoding, mark) = read;
+        Abandon();
+        return null;
     }
 
     /// <summary>Puts the text after a change on the disk, in the journal.</summary>

@@ -21,6 +21,7 @@ public enum SaveOutcome
 public sealed class ReadingsDocument : IDisposable
 {
     private readonly FileClaim? claim;
+    private FileClaim? onlooker;
     private ReadingsJournal? journal;
     private FileFingerprint basis;
     private ImmutableArray<ReadingSet> asRead;
@@ -42,7 +43,24 @@ public sealed class ReadingsDocument : IDisposable
     public static ReadingsDocument Open(string path, ImmutableArray<ReadingSet> asRead)
     {
         var full = System.IO.Path.GetFullPath(path);
-        return new ReadingsDocument(full, FileClaim.TryTake(full), FileFingerprint.Of(full), asRead);
+        var claim = FileClaim.TryTake(full);
+        return new ReadingsDocument(full, claim, FileFingerprint.Of(full), asRead) { onlooker = claim is null ? FileClaim.TryTake(OnlookerOf(full)) : null };
+    }
+
+    /// <summary>For the program that holds the file: whether another one has it open too.</summary>
+    public bool HasOnlooker()
+    {
+        if (!IsOurs || !File.Exists(FileClaim.PathFor(OnlookerOf(Path)))) return false;
+        using var free = FileClaim.TryTake(OnlookerOf(Path));
+        return free is null;
+    }
+
+    /// <summary>For an onlooker: whether the program that held the file has given it up. Until then the onlooker makes itself known.</summary>
+    public bool IsFree()
+    {
+        onlooker ??= FileClaim.TryTake(OnlookerOf(Path));
+        using var free = FileClaim.TryTake(Path);
+        return free is not null;
     }
 
     /// <summary>Puts the readings after an entry on the disk, in the journal.</summary>
@@ -91,8 +109,11 @@ public sealed class ReadingsDocument : IDisposable
     public void Dispose()
     {
         journal?.Dispose();
+        onlooker?.Dispose();
         claim?.Dispose();
     }
+
+    private static string OnlookerOf(string path) => path + ".onlooker";
 
     private static byte[] Bytes(ImmutableArray<ReadingSet> sets)
     {

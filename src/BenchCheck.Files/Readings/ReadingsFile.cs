@@ -1,3 +1,4 @@
+using System.Collections.Immutable;
 using System.Text;
 using BenchCheck.Core.Metering;
 
@@ -47,6 +48,33 @@ public static class ReadingsFile
         ArgumentNullException.ThrowIfNull(name);
         ArgumentNullException.ThrowIfNull(bench);
         return new ReadingsSource(() => new StringReader(text), name, bench, options ?? ReadingsOptions.Default).Survey([]);
+    }
+
+    /// <summary>The first rows of a table as they stand, for a user who says what its columns are; empty when it is none.</summary>
+    public static ImmutableArray<ImmutableArray<string>> Glance(string path, Bench bench)
+    {
+        ArgumentNullException.ThrowIfNull(path);
+        try
+        {
+            var head = new byte[4096];
+            int length;
+            using (var stream = File.OpenRead(path)) length = stream.ReadAtLeast(head, head.Length, throwOnEndOfStream: false);
+            if (TextBytes.EncodingOf(head.AsSpan(0, length), out _) is not { } encoding) return [];
+            try
+            {
+                return Source(encoding).Glance(ColumnMap.RowsSeen);
+            }
+            catch (DecoderFallbackException)
+            {
+                return Source(Encoding.Latin1).Glance(ColumnMap.RowsSeen);
+            }
+        }
+        catch (Exception failure) when (TextBytes.IsFileFailure(failure) || failure is CsvHelper.CsvFormatException)
+        {
+            return [];
+        }
+
+        ReadingsSource Source(Encoding encoding) => new(() => new StreamReader(path, encoding), path, bench, ReadingsOptions.Default);
     }
 
     /// <summary>Null when the file is not in that encoding.</summary>

@@ -15,7 +15,8 @@ internal sealed record PlaceColumn(int Index, ReadingQuantity Quantity, string A
 internal sealed record ReadingsHeader(
     FrozenDictionary<string, int> Fields, string? ValueUnit, ImmutableArray<PlaceColumn> Places, int ColumnCount)
 {
-    private static readonly ImmutableArray<string> LongFields =
+    /// <summary>Fields of the long form.</summary>
+    public static ImmutableArray<string> LongFields { get; } =
         ["serial", "condition", "quantity", "at", "against", "value", "unit", "meter", "range", "uncertainty", "repeats", "scatter", "time", "note"];
 
     private static readonly ImmutableArray<string> WideFields = ["serial", "condition", "meter", "time", "note"];

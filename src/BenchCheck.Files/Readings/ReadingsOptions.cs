@@ -7,4 +7,7 @@ public sealed record ReadingsOptions
 
     /// <summary>Rows that cannot be used are left out, each with a warning; without it one such row makes the file unusable.</summary>
     public bool SkipBadRows { get; init; }
+
+    /// <summary>What the columns are, where the user says so; null for what the file's own header says.</summary>
+    public ColumnMap? Columns { get; init; }
 }

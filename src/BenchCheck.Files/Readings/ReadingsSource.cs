@@ -58,7 +58,7 @@ internal sealed class ReadingsSource(Func<TextReader> open, string file, Bench b
     private void SurveyRows()
     {
         using var text = open();
-        using var rows = DelimitedText.Rows(text, Delimiter()).GetEnumerator();
+        using var rows = Rows(text).GetEnumerator();
         if (!rows.MoveNext())
         {
             Report(Problem(0, true, new TextFault("an empty file", "a readings file: a header row such as at,value and a row a reading")));
@@ -118,6 +118,19 @@ internal sealed class ReadingsSource(Func<TextReader> open, string file, Bench b
     private static string SerialOf(RowReader reader, ReadingsHeader header, DelimitedRow row) =>
         header.IsWide && !header.HasSerial ? string.Create(CultureInfo.InvariantCulture, $"line {row.Line}") : reader.Serial;
 
+    /// <summary>The first rows as they stand, the header with them.</summary>
+    public ImmutableArray<ImmutableArray<string>> Glance(int rows)
+    {
+        using var text = open();
+        return [.. DelimitedText.Rows(text, Delimiter()).Take(rows).Select(r => r.Cells.ToImmutableArray())];
+    }
+
+    private IEnumerable<DelimitedRow> Rows(TextReader text)
+    {
+        var rows = DelimitedText.Rows(text, Delimiter());
+        return options.Columns is { } columns ? columns.Under(rows) : rows;
+    }
+
     private char Delimiter()
     {
         using var text = open();
@@ -127,7 +140,7 @@ internal sealed class ReadingsSource(Func<TextReader> open, string file, Bench b
     private IEnumerable<ReadingSet> Stream()
     {
         using var text = open();
-        using var rows = DelimitedText.Rows(text, Delimiter()).GetEnumerator();
+        using var rows = Rows(text).GetEnumerator();
         if (!rows.MoveNext() || ReadingsHeader.Read(rows.Current, names, _ => { }, file) is not { } header) throw Changed();
         var reader = new RowReader(header, names);
         var pending = new Dictionary<string, RepeatCombiner>(StringComparer.Ordinal);

@@ -19,6 +19,7 @@ internal sealed partial class BenchScreen
         new(Key.F6, "F6", "Reading", "_Add elsewhere", "add a reading anywhere: node against node, a current, another meter or range; in the parts view: add a part", () => InView(AddReading, AddPart)),
         new(Key.F7, "F7", "View", "_Suspect in table", "show the readings as the next suspect explains them", () => Look(s => s.NextSuspect())),
         new(Key.F8, "F8", "Help", "_Cautions", "cautions, and what was assumed", ShowCautions),
+        new(Key.L.WithCtrl, "Ctrl+L", "Board", "Bench _log", "the bench log: file this check, look at what is on record of this board", ShowLog),
         new(Key.F9, "F9", null, "Menu", "the menus", OpenMenu),
         new(Key.U.WithCtrl, "Ctrl+U", "Reading", "_Undo", "undo the last entry", () => EnterHistory(s => s.CanUndo, s => s.Undo(), "Nothing to undo.")),
         new(Key.Y.WithCtrl, "Ctrl+Y", "Reading", "_Redo", "redo what was undone", () => EnterHistory(s => s.CanRedo, s => s.Redo(), "Nothing to redo.")),

@@ -75,6 +75,13 @@ internal sealed partial class BenchScreen
         Opening opening;
         try
         {
+            // Nobody, not even this screen, may hold the readings that are opened.
+            if (bench is { } held && held.ReadingsPath == Path.GetFullPath(readingsPath ?? Path.ChangeExtension(boardPath, ".csv")))
+            {
+                bench = null;
+                held.Dispose();
+            }
+
             opening = Screens.Workbench.Open(boardPath, readingsPath, skipBadRows, clock);
         }
         catch (Exception failure) when (Screens.Workbench.IsFileFailure(failure) || failure is ArgumentException)
@@ -96,7 +103,7 @@ internal sealed partial class BenchScreen
             if (bench == next) Take(report);
         });
         folder.Remember(boardPath);
-        (view, partCursor, awaitsGuidance, saysChanged) = (ScreenView.Readings, 0, false, false);
+        (view, partCursor, awaitsGuidance, saysChanged, hasOnlooker) = (ScreenView.Readings, 0, false, false, false);
         entry.Text = "";
         message = next.IsOurs
             ? opening.Problems.IsEmpty ? ("", Tone.Plain) : (opening.Problems[0].ToString(), Tone.Doubt)
@@ -104,6 +111,17 @@ internal sealed partial class BenchScreen
         Close();
         next.Start();
         if (next.Left is { } left) OfferLeft(next, left);
+    }
+
+    /// <summary>For a screen that looked on: the readings as they are now, to be entered here where the other screen is gone.</summary>
+    private void OpenAnew(Workbench b)
+    {
+        var (cursor, shown) = (b.Session.Cursor, view);
+        Open(b.BoardPath, b.ReadingsPath, false);
+        if (bench is not { } next || next == b) return;
+        if (panel is null) ShowView(shown);
+        next.Look(s => s.InCondition(cursor.Condition) is var there && there.Rows.Any(r => r.Place == cursor) ? there.MoveTo(cursor) : there);
+        Say(next.IsOurs ? "The other screen is closed: readings are entered here now." : "The readings were saved in the other screen: shown as they are now.", Tone.Doubt);
     }
 
     private void ShowProblems(string boardPath, string? readingsPath, Opening opening)
@@ -115,11 +133,11 @@ internal sealed partial class BenchScreen
             return;
         }
 
-        Put(new ChoicePanel(palette, "Some rows of the readings cannot be used", w => [.. Lines(w).Take(Math.Max(3, Viewport.Height - 9))],
+        Ask("Some rows of the readings cannot be used", Lines,
         [
             new Choice("Go back", "nothing is taken; put the file right first", ShowStart),
             new Choice("Open without these rows", "the file as it is now is kept beside as .bak when you save", () => Open(boardPath, readingsPath, true)),
-        ], ShowStart));
+        ], ShowStart);
     }
 
     private void OfferLeft(Workbench b, LeftWork left)

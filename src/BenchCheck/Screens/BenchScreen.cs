@@ -13,6 +13,7 @@ internal sealed partial class BenchScreen : Runnable
     private static readonly TimeSpan LookAtDisk = TimeSpan.FromSeconds(2);
 
     private readonly UserFolder folder;
+    private readonly BoardRecords records;
     private readonly TimeProvider clock;
     private readonly Palette palette;
     private readonly ImmutableArray<ScreenCommand> commands;
@@ -31,12 +32,13 @@ internal sealed partial class BenchScreen : Runnable
     private bool showsDetail;
     private bool awaitsGuidance;
     private bool saysChanged;
+    private bool hasOnlooker;
     private int partCursor;
     private (string Text, Tone Tone) message = ("", Tone.Plain);
 
-    public BenchScreen(UserFolder folder, TimeProvider clock, Palette palette)
+    public BenchScreen(UserFolder folder, BoardRecords records, TimeProvider clock, Palette palette)
     {
-        (this.folder, this.clock, this.palette) = (folder, clock, palette);
+        (this.folder, this.records, this.clock, this.palette) = (folder, records, clock, palette);
         Width = Dim.Fill();
         Height = Dim.Fill();
         SetScheme(palette.Scheme());
@@ -242,12 +244,32 @@ internal sealed partial class BenchScreen : Runnable
         return ($"Next: {name}.", Tone.Plain);
     }
 
+    /// <summary>Looks at what others do to the files of the board on the bench.</summary>
     private bool LookForChange()
     {
-        if (bench is { } b && panel is null && b.HasChangedOnDisk() != saysChanged)
+        if (bench is not { } b || panel is not null) return true;
+        if (!b.IsOurs)
+        {
+            if (b.MayOpenAnew) OpenAnew(b);
+            return true;
+        }
+
+        if (b.HasChangedOnDisk() != saysChanged)
         {
             saysChanged = !saysChanged;
             if (saysChanged) Say("The readings file was changed by another program: Ctrl+S brings both together.", Tone.Doubt);
+        }
+
+        if (b.HasOnlooker != hasOnlooker)
+        {
+            hasOnlooker = !hasOnlooker;
+            Say(hasOnlooker ? "Another screen has opened these readings too: it looks on, entries are made here." : "The other screen is closed.", Tone.Doubt);
+        }
+
+        if (b.FollowBoard() is { } news)
+        {
+            SetNeedsLayout();
+            Say(news, Tone.Doubt);
         }
 
         return true;

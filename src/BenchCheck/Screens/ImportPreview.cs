@@ -8,18 +8,21 @@ namespace BenchCheck.Screens;
 /// <summary>What a readings file from elsewhere would bring, seen before anything is taken.</summary>
 /// <param name="Sets">the usable readings, a set a board</param>
 /// <param name="Problems">rows and columns that cannot be used, with their reasons</param>
-internal sealed record ImportPreview(string Path, ImmutableArray<ReadingSet> Sets, ImmutableArray<FileProblem> Problems)
+/// <param name="Columns">as the user named them; null for the file's own header</param>
+internal sealed record ImportPreview(string Path, ImmutableArray<ReadingSet> Sets, ImmutableArray<FileProblem> Problems, ColumnMap? Columns)
 {
     private const int MostShown = 200;
 
     public bool IsUsable => Sets.Any(s => !s.Readings.IsEmpty);
 
-    public static ImportPreview Of(string path, Bench bench)
+    /// <param name="columns">null for what the file's own header says</param>
+    public static ImportPreview Of(string path, Bench bench, ColumnMap? columns)
     {
-        var strict = ReadingsFile.Read(path, bench);
-        if (strict.IsUsable) return new ImportPreview(path, [.. strict.Sets.Take(Workbench.MostBoards)], strict.Problems);
-        var rest = ReadingsFile.Read(path, bench, new ReadingsOptions { SkipBadRows = true });
-        return new ImportPreview(path, [.. rest.Sets.Take(Workbench.MostBoards)], strict.Problems);
+        var options = new ReadingsOptions { Columns = columns };
+        var strict = ReadingsFile.Read(path, bench, options);
+        if (strict.IsUsable) return new ImportPreview(path, [.. strict.Sets.Take(Workbench.MostBoards)], strict.Problems, columns);
+        var rest = ReadingsFile.Read(path, bench, options with { SkipBadRows = true });
+        return new ImportPreview(path, [.. rest.Sets.Take(Workbench.MostBoards)], strict.Problems, columns);
     }
 
     /// <summary>The readings of the board on the bench with these laid over; repeats of a place that was read stand in its place.</summary>

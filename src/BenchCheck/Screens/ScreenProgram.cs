@@ -1,5 +1,6 @@
 using System.Runtime.InteropServices;
 using BenchCheck.Commands;
+using BenchCheck.Commands.Log;
 using Terminal.Gui.App;
 using Terminal.Gui.Input;
 
@@ -68,7 +69,7 @@ internal static class ScreenProgram
             app.Init();
             FreeKeys(app);
             app.Driver!.Force16Colors = true;
-            using var screen = new BenchScreen(UserFolder.Usual(), TimeProvider.System, Palette.ForEnvironment());
+            using var screen = new BenchScreen(UserFolder.Usual(), new BoardRecords(LogChoice.Usual), TimeProvider.System, Palette.ForEnvironment());
             using var resumed = OperatingSystem.IsWindows() ? null : PosixSignalRegistration.Create(PosixSignal.SIGCONT, _ => app.Invoke(screen.DrawAnew));
             screen.Initialized += (_, _) => screen.Begin(board, readings);
             app.Run(screen);

@@ -7,16 +7,26 @@ namespace BenchCheck.Screens;
 /// <content>The files on disk: saving, and what others did to them meanwhile.</content>
 internal sealed partial class Workbench
 {
-    public bool HasBoardChangedOnDisk()
+    private FileFingerprint boardSeen;
+
+    /// <summary>Looks whether another program changed the board file; takes it over when nothing was changed here. A sentence when there is news.</summary>
+    public string? FollowBoard()
     {
         try
         {
-            return board.HasChangedOnDisk();
+            var now = FileFingerprint.Of(BoardPath);
+            if (!board.HasChangedOnDisk() || now == boardSeen) return null;
+            boardSeen = now;
         }
         catch (Exception failure) when (IsFileFailure(failure))
         {
-            return true;
+            return null;
         }
+
+        if (Session.IsBoardDirty) return "The board file was changed by another program: Ctrl+S asks what to do.";
+        return RereadBoard() is { } refused
+            ? $"The board file was changed by another program; the board here stays as it was: {refused}"
+            : "The board file was changed by another program and taken over; Ctrl+U goes back.";
     }
 
     /// <summary>Takes the board file as it is on disk now, as a change that can be undone. Null, or why the board here stays as it is.</summary>
@@ -24,12 +34,14 @@ internal sealed partial class Workbench
     {
         try
         {
-            var text = board.Reread();
-            Session = Session.SavedBoard(text);
-            if (WithBoard(Session, text) is { Fault: { } fault }) return Sentence(fault);
-            if (EnterBoard(_ => text) is { } refused) return refused;
-            board.Abandon();
-            return null;
+            return board.Reread(text =>
+            {
+                var next = WithBoard(Session, text);
+                if (next.Fault is { } fault) return Sentence(fault);
+                Session = next.Value.SavedBoard(text);
+                Check();
+                return null;
+            });
         }
         catch (Exception failure) when (IsFileFailure(failure))
         {
@@ -63,7 +75,7 @@ internal sealed partial class Workbench
             Session = Session.SavedBoard(Session.Board);
         }
 
-        if (Session.AreReadingsDirty || !File.Exists(ReadingsPath))
+        if (Session.AreReadingsDirty || HasChangedOnDisk() || !File.Exists(ReadingsPath))
         {
             var outcome = document.Save(Session.Sets);
             if (outcome != SaveOutcome.Saved) return (outcome, false);

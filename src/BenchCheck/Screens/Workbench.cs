@@ -49,6 +49,12 @@ internal sealed partial class Workbench : IDisposable
     /// <summary>False while another screen has the readings file: look, but do not enter.</summary>
     public bool IsOurs => document.IsOurs;
 
+    /// <summary>True while another screen looks on at the readings that are entered here.</summary>
+    public bool HasOnlooker => document.HasOnlooker();
+
+    /// <summary>For a screen that only looks on: whether the readings changed, or may now be entered here.</summary>
+    public bool MayOpenAnew => !document.IsOurs && (document.IsFree() || HasChangedOnDisk());
+
     public static Opening Open(string boardPath, string? readingsPath, bool skipBadRows, TimeProvider clock)
     {
         var board = BoardFile.Read(boardPath);

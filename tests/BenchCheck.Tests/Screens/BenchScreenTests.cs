@@ -239,6 +239,42 @@ public sealed class BenchScreenTests : IDisposable
         Assert.Contains("12.16 V", screen.AwaitCheck());
     }
 
+    [Fact]
+    public void Columns_that_are_not_recognised_are_named_by_hand_before_anything_is_taken()
+    {
+        File.WriteAllText(folder.In("other.csv"), "Messpunkt;Anzeige (mV);Bemerkung\nVCC;12500;warm\nE1;1480,5;\n");
+        using var screen = new ScreenUnderTest(folder.Path, width: 120, height: 40);
+        screen.AwaitCheck();
+        screen.Press(Key.T.WithCtrl).Type("other.csv").Press(Key.Enter);
+        var drawn = screen.Text;
+        Assert.Contains("What are the columns of other.csv?", drawn);
+        Assert.Matches(@"> Messpunkt +at +VCC   E1", drawn);
+        Assert.Matches(@"  Anzeige \(mV\) +value +12500", drawn);
+        Assert.Matches(@"  Bemerkung +not read +warm", drawn);
+        screen.Press(Key.CursorDown, Key.CursorDown, Key.CursorLeft);
+        while (!System.Text.RegularExpressions.Regex.IsMatch(screen.Text, @"> Bemerkung +note ")) screen.Press(Key.CursorLeft);
+        screen.Press(Key.Enter);
+        Assert.Contains("2 readings understood, 0 rows or columns not", screen.Text);
+        Assert.False(screen.Screen.Workbench!.Session.IsDirty);
+        screen.Type("2");
+        screen.AwaitCheck();
+        var readings = screen.Screen.Workbench!.Session.Readings.Readings;
+        Assert.Contains(readings, r => r is { At: "VCC", Value: 12.5, Note: "warm" });
+        Assert.Contains(readings, r => r is { At: "E1", Value: 1.4805 });
+    }
+
+    [Fact]
+    public void A_table_without_a_header_is_taken_when_the_user_says_so()
+    {
+        File.WriteAllText(folder.In("other.csv"), "VCC,12.5\nE1,1.48\n");
+        using var screen = new ScreenUnderTest(folder.Path, width: 120, height: 40);
+        screen.AwaitCheck();
+        screen.Press(Key.T.WithCtrl).Type("other.csv").Press(Key.Enter);
+        Assert.Contains("The first row is a reading like the others", screen.Text);
+        screen.Press(Key.Enter);
+        Assert.Contains("2 readings understood", screen.Text);
+    }
+
     [Theory]
     [InlineData(".png", "PNG")]
     [InlineData(".svg", "</svg>")]
@@ -261,6 +297,35 @@ public sealed class BenchScreenTests : IDisposable
             for (var i = 0; i < 4; i++) screen.Press(Key.Backspace);
             screen.Type(ending).Press(Key.Enter);
         }
+    }
+
+    [Fact]
+    public void A_check_is_filed_in_the_bench_log_and_looked_at_again()
+    {
+        using var screen = new ScreenUnderTest(folder.Path, height: 60);
+        screen.AwaitCheck();
+        screen.Press(Key.L.WithCtrl);
+        screen.Await("Nothing is on record of \"Mist-valve driver\" yet");
+        screen.Press(Key.Enter);
+        screen.Await("Filed as record 1.");
+        screen.Press(Key.L.WithCtrl);
+        screen.Await("record 1");
+        screen.Press(Key.CursorDown, Key.Enter);
+        var drawn = screen.Await("Record 1");
+        Assert.Matches(@"powered +C1 +11\.16 V +6\.7\d\d V +\+5\.\d out", drawn);
+        Assert.Contains("R4 of another value", drawn);
+        screen.Press(Key.Esc);
+        screen.Await("File this check");
+    }
+
+    [Fact]
+    public void The_board_on_the_bench_can_be_opened_again()
+    {
+        using var screen = new ScreenUnderTest(folder.Path);
+        screen.AwaitCheck();
+        screen.Press(Key.P.WithCtrl, Key.Enter);
+        Assert.DoesNotContain("look only", screen.AwaitCheck());
+        Assert.True(screen.Screen.Workbench!.IsOurs);
     }
 
     [Fact]

@@ -1,3 +1,4 @@
+using BenchCheck.Records;
 using BenchCheck.Screens;
 using Terminal.Gui.App;
 using Terminal.Gui.Input;
@@ -21,7 +22,7 @@ internal sealed class ScreenUnderTest : IDisposable
         app.Init("ansi");
         ScreenProgram.FreeKeys(app);
         app.Driver!.SetScreenSize(width, height);
-        Screen = new BenchScreen(user, TimeProvider.System, new Palette(hasColour));
+        Screen = new BenchScreen(user, new BoardRecords(() => LogPlace.Parse(Path.Combine(folder, "log.db"))), TimeProvider.System, new Palette(hasColour));
         token = app.Begin(Screen)!;
         Screen.Begin(board is null ? null : Path.Combine(folder, board), null);
         Draw();

@@ -57,6 +57,46 @@ public sealed class WorkbenchTests : IDisposable
     }
 
     [Fact]
+    public void Both_screens_on_one_file_know_of_each_other_and_the_second_takes_over_when_the_first_is_closed()
+    {
+        var first = Open();
+        Assert.False(first.HasOnlooker);
+        using (var second = Open())
+        {
+            Assert.False(second.IsOurs);
+            Assert.True(first.HasOnlooker);
+            Assert.False(second.MayOpenAnew);
+            first.Enter((s, t) => s.Type("11.5", false, t));
+            first.Save();
+            Assert.True(second.MayOpenAnew);
+        }
+
+        Assert.False(first.HasOnlooker);
+        using var third = Open();
+        first.Dispose();
+        Assert.True(third.MayOpenAnew);
+        using var fourth = Open();
+        Assert.True(fourth.IsOurs);
+    }
+
+    [Fact]
+    public void A_board_file_changed_in_an_editor_is_taken_over_at_once_and_a_broken_one_is_not()
+    {
+        using var bench = Open();
+        var text = File.ReadAllText(bench.BoardPath);
+        File.WriteAllText(bench.BoardPath, text.Replace("470 5%", "4k7 5%", StringComparison.Ordinal));
+        Assert.Contains("taken over", bench.FollowBoard());
+        Assert.Equal("4k7 5%", bench.Session.Board.Part("R4")!.Value("value"));
+        Assert.False(bench.Session.IsDirty);
+        File.WriteAllText(bench.BoardPath, text.Replace("470 5%", "oops", StringComparison.Ordinal));
+        Assert.Contains("stays as it was", bench.FollowBoard());
+        Assert.Null(bench.FollowBoard());
+        Assert.Equal("4k7 5%", bench.Session.Board.Part("R4")!.Value("value"));
+        Assert.Equal(SaveOutcome.Saved, bench.Save().Outcome);
+        Assert.Contains("oops", File.ReadAllText(bench.BoardPath));
+    }
+
+    [Fact]
     public void A_file_changed_meanwhile_is_brought_together_with_what_was_typed()
     {
         using var bench = Open();

@@ -34,9 +34,14 @@ internal sealed class LogChoice
     /// <summary>The option was given, with or without a place.</summary>
     public bool IsAsked(ParseResult parsed) => parsed.GetResult(log) is OptionResult { Implicit: false };
 
-    public LogPlace Place(ParseResult parsed)
+    public LogPlace Place(ParseResult parsed) => PlaceOf(parsed.GetValue(log));
+
+    /// <summary>The log of somebody who names none.</summary>
+    public static LogPlace Usual() => PlaceOf(null);
+
+    private static LogPlace PlaceOf(string? named)
     {
-        var named = parsed.GetValue(log) ?? Environment.GetEnvironmentVariable(Variable);
+        named ??= Environment.GetEnvironmentVariable(Variable);
         return string.IsNullOrWhiteSpace(named) ? LogPlace.Standard() : LogPlace.Parse(named);
     }
 }
