@@ -50,6 +50,9 @@ internal readonly struct JunctionCurve
         return Math.Log((amperes + saturation) / reference) + share * Math.Log(reference / saturation);
     }
 
+    /// <summary>dv/d(drop) at a current: one, less what the saturation current has in it.</summary>
+    public double VoltsByDrop(double amperes) => 1 - saturation / (Math.Max(amperes, bendAmperes) + saturation);
+
     /// <summary>How far, in volts, the tangent laid at a current misses the curve when the current changes.</summary>
     public double TangentMiss(double amperes, double change)
     {

@@ -69,6 +69,11 @@ public sealed class NetworkSolver
     /// <summary>Port currents of the last solution, without any meter.</summary>
     public ReadOnlySpan<double> PortCurrents => z.AsSpan(0, ports);
 
+    /// <summary>Slope dv/dz of each port at the last solution, without any meter.</summary>
+    internal ReadOnlySpan<double> PortSlopes => slope.AsSpan(0, ports);
+
+    internal JunctionLaw Law => law;
+
     /// <summary>Finds the operating state of <paramref name="net"/> at <paramref name="parameters"/>.</summary>
     /// <param name="parameters">θ, in SI units</param>
     /// <param name="start">port currents to start from; empty to start with every device off</param>
@@ -333,7 +338,7 @@ public sealed class NetworkSolver
         for (var k = 0; k < ports; k++)
         {
             ref readonly var e = ref network.Ports[k];
-            AddTerm(e.Drop, scale * mu[k], gradient);
+            AddTerm(e.Drop, scale * mu[k] * (corners[k] ? 1 : curves[k].VoltsByDrop(loaded[k])), gradient);
             if (corners[k]) AddTerm(e.Excess, scale * mu[k], gradient);
             if (!corners[k] || e.IsStraight) AddTerm(e.SeriesOhms, scale * mu[k] * loaded[k], gradient);
             if (!corners[k]) AddTerm(e.Ideality, scale * mu[k] * network.ThermalVolts * curves[k].VoltsByThermal(loaded[k]), gradient);

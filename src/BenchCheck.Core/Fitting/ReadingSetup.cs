@@ -51,7 +51,7 @@ internal sealed class SmallSignalSetup(
     {
         solver.Solve(atRest, theta, start);
         solver.PortCurrents.CopyTo(start);
-        solver.SmallSignals.Solve(signal, theta, start, hertz);
+        solver.SmallSignals.Solve(signal, theta, start, solver.Law == JunctionLaw.Exponential ? solver.PortSlopes : [], hertz);
     }
 
     public override double Read(int k, Span<double> gradient)

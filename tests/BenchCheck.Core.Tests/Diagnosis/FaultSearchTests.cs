@@ -45,6 +45,7 @@ public class FaultSearchTests
             fresh.Add(logEvidence);
         }
 
-        Assert.Equal(fresh.OrderByDescending(e => e), fresh);
+        // Hypotheses that are one and the same to these readings may stand in either order.
+        Assert.All(fresh.Zip(fresh.Skip(1)), pair => Assert.True(pair.Second <= pair.First + 1e-6, $"{pair.Second} after {pair.First}"));
     }
 }

@@ -6,9 +6,9 @@ namespace BenchCheck.Core.Equations.SmallSignal;
 /// <summary>Solves a network for small changes around an operating state and differentiates what is read from it.</summary>
 /// <remarks>
 /// <para>
-/// Sources are dead, every conducting junction is its tangent, transconductance z / (n V_T + R z) between its pins (for a transistor g_m = i_C/V_T
-/// and r_π = β/g_m; Gray, Hurst, Lewis and Meyer, Analysis and Design of Analog Integrated Circuits, 1.4, from memory). The port currents of
-/// the tangents are unknowns beside those of the network: N = size + ports.
+/// Sources are dead, every conducting junction is its tangent, transconductance t / (n V_T + R t) between its pins with t = z, under the junction
+/// law t = z + I_s (for a transistor g_m = i_C/V_T and r_π = β/g_m; Gray, Hurst, Lewis and Meyer, Analysis and Design of Analog Integrated
+/// Circuits, 1.4, from memory). The port currents of the tangents are unknowns beside those of the network: N = size + ports.
 /// </para>
 /// <para>
 /// One factorisation serves every reading: with λ = A⁻ᵀ c and x = A⁻¹ d, T(c, d) = cᵀ x and ∂T/∂p = −λᵀ (∂A/∂p) x (Director and Rohrer 1969).
@@ -30,6 +30,9 @@ public sealed class SmallSignalSolver
     private const double ShortOhms = 1e-6;
     private const double OpenOhms = 1e13;
 
+    /// <summary>A junction whose slope is as flat as this is off.</summary>
+    private const double LeakageOhms = 0.99e13;
+
     /// <summary>Ties what nothing else ties to the reference.</summary>
     private const double TieSiemens = 1e-13;
 
@@ -42,6 +45,10 @@ public sealed class SmallSignalSolver
     private Network network = null!;
     private double[] theta = [];
     private double[] portCurrents = [];
+
+    /// <summary>t, the current that sets the slope of a port; zero for one that is off.</summary>
+    private double[] totals = [];
+
     private double[] matrix = [];
     private double[] work = [];
     private int[] pivot = [];
@@ -54,9 +61,10 @@ public sealed class SmallSignalSolver
     /// <param name="net">compiled for small signals</param>
     /// <param name="parameters">θ, in SI units</param>
     /// <param name="currents">port currents of the operating state, one a port of the network</param>
+    /// <param name="slopes">dv/dz of its ports by the junction law; empty where drops are constant</param>
     /// <param name="hertz">null when capacitors count as shorts</param>
     /// <exception cref="NoOperatingStateException">the equations are singular</exception>
-    public void Solve(Network net, ReadOnlySpan<double> parameters, ReadOnlySpan<double> currents, double? hertz)
+    public void Solve(Network net, ReadOnlySpan<double> parameters, ReadOnlySpan<double> currents, ReadOnlySpan<double> slopes, double? hertz)
     {
         ArgumentNullException.ThrowIfNull(net);
         network = net;
@@ -67,9 +75,10 @@ public sealed class SmallSignalSolver
         var order = unknowns * (angular is null ? 1 : 2);
         if (pivot.Length < order) Grow(order);
         if (theta.Length != parameters.Length) theta = new double[parameters.Length];
-        if (portCurrents.Length < ports) portCurrents = new double[ports];
+        if (portCurrents.Length < ports) (portCurrents, totals) = (new double[ports], new double[ports]);
         parameters.CopyTo(theta);
         currents.CopyTo(portCurrents);
+        for (var k = 0; k < ports; k++) totals[k] = slopes.IsEmpty || net.Ports[k].IsStraight ? Math.Max(currents[k], 0) : slopes[k] >= LeakageOhms ? 0 : Thermal(net.Ports[k]) / slopes[k];
         matrix.AsSpan(0, order * order).Clear();
         Stamp();
         if (!LuFactor.Factor(matrix.AsSpan(0, order * order), order, pivot))
@@ -227,7 +236,7 @@ public sealed class SmallSignalSolver
             Add(e.TransportTo, row, -1);
         }
 
-        if (portCurrents[k] <= 0)
+        if (totals[k] <= 0)
         {
             Add(row, row, 1);
         }
@@ -238,7 +247,7 @@ public sealed class SmallSignalSolver
         }
         else if (!e.IsStraight)
         {
-            AddDifference(row, e.High, e.Low, Siemens(e, portCurrents[k]));
+            AddDifference(row, e.High, e.Low, 1 / (Thermal(e) / totals[k] + e.SeriesOhms.Value(theta)));
             Add(row, row, -1);
         }
         else
@@ -248,8 +257,7 @@ public sealed class SmallSignalSolver
         }
     }
 
-    private double Siemens(in Network.CompiledPort port, double amperes) =>
-        amperes / (port.Ideality.Value(theta) * network.ThermalVolts + port.SeriesOhms.Value(theta) * amperes);
+    private double Thermal(in Network.CompiledPort port) => port.Ideality.Value(theta) * network.ThermalVolts;
 
     private Complex Impedance(in Network.CompiledReactance e)
     {
@@ -306,7 +314,7 @@ public sealed class SmallSignalSolver
         {
             ref readonly var e = ref network.Ports[k];
             var row = size + k;
-            if (e.Row >= 0 || portCurrents[k] <= 0) continue;
+            if (e.Row >= 0 || totals[k] <= 0) continue;
             var gain = e.Gain.Value(theta);
             AddTerm(e.Gain, Product(Across(l, e.High, e.Low), x[row]) / (gain * gain), gradient);
             if (!e.Siemens.IsConstantZero)
@@ -321,12 +329,15 @@ public sealed class SmallSignalSolver
                 continue;
             }
 
-            var (z, thermal) = (portCurrents[k], e.Ideality.Value(theta) * network.ThermalVolts);
-            var total = thermal + e.SeriesOhms.Value(theta) * z;
-            var bySiemens = -Product(l[row], Across(x, e.High, e.Low)) / (total * total);
+            // g = t / (T + R t) with t = z + I_s; ln I_s falls with the drop by 1/T and rises with T by drop/T² (I_s zero: a constant drop).
+            var (t, thermal) = (totals[k], Thermal(e));
+            var saturation = t - portCurrents[k];
+            var denominator = thermal + e.SeriesOhms.Value(theta) * t;
+            var bySiemens = -Product(l[row], Across(x, e.High, e.Low)) / (denominator * denominator);
             byCurrent[k] += bySiemens * thermal;
-            AddTerm(e.Ideality, -bySiemens * z * network.ThermalVolts, gradient);
-            AddTerm(e.SeriesOhms, -bySiemens * z * z, gradient);
+            AddTerm(e.Drop, -bySiemens * saturation, gradient);
+            AddTerm(e.Ideality, bySiemens * (saturation * e.Drop.Value(theta) / thermal - t) * network.ThermalVolts, gradient);
+            AddTerm(e.SeriesOhms, -bySiemens * t * t, gradient);
         }
     }
 
