@@ -15,7 +15,7 @@ public sealed class BenchLog : IDisposable
     private const int PageLength = 100;
 
     private const string EntryColumns = "number, filed_at, program, board, serial, verdict, hash";
-    private const string RecordColumns = EntryColumns + ", settings, result, board_file, readings_file, rates_file, previous";
+    private const string RecordColumns = EntryColumns + ", settings, result, board_file, readings_file, rates_file, previous, plot";
 
     private readonly LogDatabase database;
     private readonly LogPlace place;
@@ -133,7 +133,8 @@ public sealed class BenchLog : IDisposable
             filing.Serial is null ? null : Filing.Storable(filing.Serial), Filing.Storable(filing.Verdict), "");
         var record = new LogRecord(
             entry, Filing.Storable(filing.Settings), Filing.Storable(filing.Result), inputs.Write(filing.BoardFile), inputs.Write(filing.ReadingsFile),
-            filing.RatesFile is { } rates ? inputs.Write(rates) : null, previous);
+            filing.RatesFile is { } rates ? inputs.Write(rates) : null, previous,
+            filing.Plot is { } plot ? inputs.Write(plot) : null);
         return record with { Entry = entry with { Hash = ChainHash.Of(record) } };
     }
 
@@ -161,7 +162,7 @@ public sealed class BenchLog : IDisposable
         {
             records.Add(new LogRecord(
                 Entry(reader), reader.GetString(7), reader.GetString(8), reader.GetString(9), reader.GetString(10),
-                reader.IsDBNull(11) ? null : reader.GetString(11), reader.GetString(12)));
+                reader.IsDBNull(11) ? null : reader.GetString(11), reader.GetString(12), reader.IsDBNull(13) ? null : reader.GetString(13)));
         }
 
         return records.ToImmutable();

@@ -34,6 +34,8 @@ internal static class ChainHash
         Add(hash, record.BoardFile);
         Add(hash, record.ReadingsFile);
         Add(hash, record.RatesFile);
+        // Records from before there were plots keep the hash that they were filed with.
+        if (record.Plot is not null) Add(hash, record.Plot);
         return Convert.ToHexStringLower(hash.GetHashAndReset());
     }
 

@@ -32,9 +32,9 @@ public sealed record ChainReport(long Count, string Newest, ImmutableArray<strin
                 number = record.Entry.Number;
                 if (record.Previous != previous) Fault($"record {number} does not follow on the record before it");
                 if (ChainHash.Of(record) != record.Entry.Hash) Fault($"record {number} is not as it was filed");
-                foreach (var file in new[] { record.BoardFile, record.ReadingsFile, record.RatesFile })
+                foreach (var file in record.Files)
                 {
-                    if (file is null || !checkedFiles.Add(file)) continue;
+                    if (!checkedFiles.Add(file)) continue;
                     if (log.Input(file) is not { } body) Fault($"a file of record {number} is missing");
                     else if (ChainHash.Of(body) != file) Fault($"a file of record {number} is not as it was filed");
                 }

@@ -14,9 +14,10 @@ namespace BenchCheck.Records;
 /// <param name="BoardFile">the board file, byte for byte</param>
 /// <param name="ReadingsFile">the readings file, byte for byte</param>
 /// <param name="RatesFile">the file of fault rates, when there was one</param>
+/// <param name="Plot">picture of readings and residuals, SVG; null for none</param>
 public sealed record Filing(
     DateTimeOffset FiledAt, string Program, string BoardTitle, string? Serial, string Verdict, string Settings, string Result,
-    ReadOnlyMemory<byte> BoardFile, ReadOnlyMemory<byte> ReadingsFile, ReadOnlyMemory<byte>? RatesFile = null)
+    ReadOnlyMemory<byte> BoardFile, ReadOnlyMemory<byte> ReadingsFile, ReadOnlyMemory<byte>? RatesFile = null, ReadOnlyMemory<byte>? Plot = null)
 {
     internal string FiledText => TimeText(FiledAt);
 

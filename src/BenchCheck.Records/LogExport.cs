@@ -25,9 +25,9 @@ public static class LogExport
         foreach (var record in log.Records(query))
         {
             cancel.ThrowIfCancellationRequested();
-            foreach (var file in new[] { record.BoardFile, record.ReadingsFile, record.RatesFile })
+            foreach (var file in record.Files)
             {
-                if (file is not null && written.Add(file)) WriteFile(json, file, log.Input(file));
+                if (written.Add(file)) WriteFile(json, file, log.Input(file));
                 EndLine(json, target);
             }
 
@@ -61,6 +61,7 @@ public static class LogExport
         json.WriteString("boardFile", record.BoardFile);
         json.WriteString("readingsFile", record.ReadingsFile);
         json.WriteString("ratesFile", record.RatesFile);
+        json.WriteString("plot", record.Plot);
         json.WriteString("previous", record.Previous);
         json.WriteString("hash", record.Entry.Hash);
         Verbatim(json, "settings", record.Settings);

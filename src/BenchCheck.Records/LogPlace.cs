@@ -10,6 +10,9 @@ public sealed class LogPlace
     /// <summary>As messages may show it: never with a password.</summary>
     public string Name { get; }
 
+    /// <summary>A file, whose full path is the name.</summary>
+    public bool IsFile => Path is not null;
+
     internal string? Path { get; }
 
     internal string? Connection { get; }

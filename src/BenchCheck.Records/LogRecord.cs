@@ -11,8 +11,13 @@ public sealed record LogEntry(long Number, string FiledAt, string Program, strin
 /// <param name="BoardFile">SHA-256 of the board file, by which <see cref="BenchLog.Input"/> gives it</param>
 /// <param name="ReadingsFile">as above</param>
 /// <param name="RatesFile">as above; null when the usual fault rates were taken</param>
+/// <param name="Plot">as above, the picture; null when none was filed</param>
 public sealed record LogRecord(
-    LogEntry Entry, string Settings, string Result, string BoardFile, string ReadingsFile, string? RatesFile, string Previous);
+    LogEntry Entry, string Settings, string Result, string BoardFile, string ReadingsFile, string? RatesFile, string Previous, string? Plot = null)
+{
+    /// <summary>SHA-256 of every file of the record.</summary>
+    public IEnumerable<string> Files => new[] { BoardFile, ReadingsFile, RatesFile, Plot }.OfType<string>();
+}
 
 /// <summary>Which records are wanted; what is null does not matter.</summary>
 public sealed record LogQuery

@@ -20,7 +20,7 @@ public abstract class BenchLogTests : IDisposable
     {
         using var log = New();
         byte[] readings = [0xFF, 0xFE, 0x41, 0x00, 0x0D, 0x00, 0x00, 0x00];
-        var filing = Filings.Of("=cmd|'/c'!A1", "disagrees", "Größe Ω <b>'; DROP TABLE records;--") with { ReadingsFile = readings, RatesFile = Encoding.UTF8.GetBytes("open,1,2") };
+        var filing = Filings.Of("=cmd|'/c'!A1", "disagrees", "Größe Ω <b>'; DROP TABLE records;--") with { ReadingsFile = readings, RatesFile = Encoding.UTF8.GetBytes("open,1,2"), Plot = Encoding.UTF8.GetBytes("<svg>Ω</svg>") };
         var entry = Assert.Single(log.Append(filing));
         var record = log.Find(entry.Number)!;
         Assert.Equal((filing.Serial, filing.BoardTitle, filing.Verdict, filing.Settings, filing.Result), (record.Entry.Serial, record.Entry.BoardTitle, record.Entry.Verdict, record.Settings, record.Result));
@@ -28,6 +28,7 @@ public abstract class BenchLogTests : IDisposable
         Assert.Equal(readings, log.Input(record.ReadingsFile));
         Assert.Equal(Filings.Board, log.Input(record.BoardFile));
         Assert.Equal(filing.RatesFile!.Value.ToArray(), log.Input(record.RatesFile!));
+        Assert.Equal(filing.Plot!.Value.ToArray(), log.Input(record.Plot!));
         Assert.Null(log.Find(2));
         Assert.True(ChainReport.Of(log).IsWhole);
     }
@@ -94,12 +95,13 @@ public abstract class BenchLogTests : IDisposable
     [InlineData("UPDATE records SET serial = NULL WHERE number = 3", "record 3 is not as it was filed")]
     [InlineData("DELETE FROM records WHERE number = 2", "record 2 is missing")]
     [InlineData("UPDATE records SET number = 12 WHERE number = 1", "record 2 does not follow")]
+    [InlineData("UPDATE records SET plot = NULL WHERE number = 1", "record 1 is not as it was filed")]
     [InlineData("UPDATE inputs SET body = '' WHERE sha256 = (SELECT readings_file FROM records WHERE number = 2)", "a file of record 2 is not as it was filed")]
     public void Whoever_gets_round_the_guards_is_found_out(string change, string finding)
     {
         var place = NewPlace();
         using (var log = BenchLog.Open(LogPlace.Parse(place)))
-            log.Append(Filings.Of("41", "agrees", second: 1), Filings.Of("42", "disagrees", second: 2), Filings.Of("43", "agrees", second: 3));
+            log.Append(Filings.Of("41", "agrees", second: 1) with { Plot = "<svg/>"u8.ToArray() }, Filings.Of("42", "disagrees", second: 2), Filings.Of("43", "agrees", second: 3));
         Raw(place, database =>
         {
             DropGuards(database);
@@ -132,7 +134,13 @@ public abstract class BenchLogTests : IDisposable
     {
         var place = NewPlace();
         string before;
-        using (var old = BenchLog.Open(LogPlace.Parse(place), true, 1)) before = old.Append(Filings.Of("41"))[0].Hash;
+        using (var other = New())
+        {
+            before = other.Append(Filings.Of("41"))[0].Hash;
+            var filed = other.Find(1)!;
+            using (BenchLog.Open(LogPlace.Parse(place), true, 1)) Raw(place, database => InsertAsFirstVersion(database, filed, other));
+        }
+
         using var log = BenchLog.OpenExisting(LogPlace.Parse(place));
         log.Append(Filings.Of("42"));
         Assert.Equal(before, log.Find(1)!.Entry.Hash);
@@ -227,6 +235,26 @@ public abstract class BenchLogTests : IDisposable
 
     /// <summary>Takes away what keeps records from being changed, as somebody with the database's password could.</summary>
     private protected abstract void DropGuards(LogDatabase database);
+
+    private static void InsertAsFirstVersion(LogDatabase database, LogRecord record, BenchLog source)
+    {
+        foreach (var file in record.Files)
+        {
+            using var input = database.Command("INSERT INTO inputs (sha256, body) VALUES (@sha256, @body)", ("@sha256", file), ("@body", source.Input(file)));
+            input.ExecuteNonQuery();
+        }
+
+        var entry = record.Entry;
+        using var command = database.Command(
+            """
+            INSERT INTO records (number, filed_at, program, board, serial, verdict, settings, result, board_file, readings_file, rates_file, previous, hash)
+            VALUES (1, @filed_at, @program, @board, @serial, @verdict, @settings, @result, @board_file, @readings_file, NULL, @previous, @hash)
+            """,
+            ("@filed_at", entry.FiledAt), ("@program", entry.Program), ("@board", entry.BoardTitle), ("@serial", entry.Serial), ("@verdict", entry.Verdict),
+            ("@settings", record.Settings), ("@result", record.Result), ("@board_file", record.BoardFile), ("@readings_file", record.ReadingsFile),
+            ("@previous", record.Previous), ("@hash", entry.Hash));
+        command.ExecuteNonQuery();
+    }
 
     private static void Raw(string place, Action<LogDatabase> work)
     {

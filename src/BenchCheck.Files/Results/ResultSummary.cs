@@ -34,7 +34,10 @@ public sealed record ResultSummary(
 
     private static FiledEstimate Estimate(JsonElement row) => new(
         Text(row, "part"), Text(row, "parameter"), Optional(row, "condition"), Text(row, "unit"), Number(row, "nominalLow"), Number(row, "nominalHigh"),
-        Number(row, "estimate"), Number(row, "standardUncertainty"), Text(row, "determined"));
+        Number(row, "estimate"), Number(row, "standardUncertainty"), Text(row, "determined"))
+    {
+        Nominal = Number(row, "nominal"), Low = Number(row, "low"), High = Number(row, "high"),
+    };
 
     private static string Text(JsonElement row, string name) => Optional(row, name) ?? "";
 
@@ -55,6 +58,13 @@ public sealed record FiledEstimate(
 {
     /// <summary>"Q1 gain", "V2 voltage (bright)".</summary>
     public string Name => Condition is null ? $"{Part} {Parameter}" : $"{Part} {Parameter} ({Condition})";
+
+    public double Nominal { get; init; } = double.NaN;
+
+    /// <summary>Lower end of the coverage interval.</summary>
+    public double Low { get; init; } = double.NaN;
+
+    public double High { get; init; } = double.NaN;
 }
 
 /// <summary>A suspect of a filed result.</summary>

@@ -20,6 +20,7 @@ internal static class Migrations
         CREATE INDEX records_by_serial ON records (serial, number);
         CREATE INDEX records_by_time ON records (filed_at);
         """,
+        "ALTER TABLE records ADD COLUMN plot {text} REFERENCES inputs (sha256);",
     ];
 
     public static int Newest => Steps.Length;

@@ -6,11 +6,11 @@ namespace BenchCheck.Records.Databases;
 internal sealed class RecordWriter(LogDatabase database) : IDisposable
 {
     private readonly DbCommand command = database.Command("""
-        INSERT INTO records (number, filed_at, program, board, serial, verdict, hash, settings, result, board_file, readings_file, rates_file, previous)
-        VALUES (@number, @filed_at, @program, @board, @serial, @verdict, @hash, @settings, @result, @board_file, @readings_file, @rates_file, @previous)
+        INSERT INTO records (number, filed_at, program, board, serial, verdict, hash, settings, result, board_file, readings_file, rates_file, previous, plot)
+        VALUES (@number, @filed_at, @program, @board, @serial, @verdict, @hash, @settings, @result, @board_file, @readings_file, @rates_file, @previous, @plot)
         """,
         ("@number", 0L), ("@filed_at", ""), ("@program", ""), ("@board", ""), ("@serial", ""), ("@verdict", ""), ("@hash", ""), ("@settings", ""),
-        ("@result", ""), ("@board_file", ""), ("@readings_file", ""), ("@rates_file", ""), ("@previous", ""));
+        ("@result", ""), ("@board_file", ""), ("@readings_file", ""), ("@rates_file", ""), ("@previous", ""), ("@plot", ""));
 
     public void Write(LogRecord record)
     {
@@ -18,7 +18,7 @@ internal sealed class RecordWriter(LogDatabase database) : IDisposable
         ReadOnlySpan<object?> values =
         [
             entry.Number, entry.FiledAt, entry.Program, entry.BoardTitle, entry.Serial, entry.Verdict, entry.Hash, record.Settings, record.Result,
-            record.BoardFile, record.ReadingsFile, record.RatesFile, record.Previous,
+            record.BoardFile, record.ReadingsFile, record.RatesFile, record.Previous, record.Plot,
         ];
         for (var i = 0; i < values.Length; i++) command.Parameters[i].Value = values[i] ?? DBNull.Value;
         command.ExecuteNonQuery();

@@ -25,7 +25,7 @@ internal sealed class CheckPictures
     public bool Write(ParseResult parsed, CheckResult result, CheckSettings settings, Inputs inputs, int number)
     {
         var isWhole = true;
-        if (parsed.GetValue(plot) is { } picture) isWhole &= IsSaved(ReadingPlot.Of(result).Save(Numbered(picture, number)));
+        if (parsed.GetValue(plot) is { } picture) isWhole &= IsSaved(ReadingPlot.Of(result).Save(NumberedPath.Of(picture, number)));
         if (parsed.GetValue(report) is { } page)
         {
             ReportInput[] files =
@@ -33,7 +33,7 @@ internal sealed class CheckPictures
                 new("board", Path.GetFileName(inputs.BoardPath(parsed)), File.ReadAllText(inputs.BoardPath(parsed))),
                 new("readings", Path.GetFileName(inputs.ReadingsPath(parsed)), File.ReadAllText(inputs.ReadingsPath(parsed))),
             ];
-            isWhole &= IsSaved(HtmlReport.Save(new Report(result, settings, [.. files], CheckFiling.Program, DateTimeOffset.Now), Numbered(page, number)));
+            isWhole &= IsSaved(HtmlReport.Save(new Report(result, settings, [.. files], CheckFiling.Program, DateTimeOffset.Now), NumberedPath.Of(page, number)));
         }
 
         return isWhole;
@@ -44,8 +44,4 @@ internal sealed class CheckPictures
         if (fault is not null) terminal.Error.WriteLine(Printable.Text(fault.ToString()));
         return fault is null;
     }
-
-    private static string Numbered(string path, int number) => number == 0
-        ? path
-        : Path.Combine(Path.GetDirectoryName(path) ?? "", $"{Path.GetFileNameWithoutExtension(path)}-{number + 1}{Path.GetExtension(path)}");
 }

@@ -83,6 +83,72 @@ public sealed class LogCommandTests : IDisposable
     }
 
     [Fact]
+    public async Task The_picture_of_a_check_is_on_record_with_it()
+    {
+        await File(WorkshopFiles.Faulty);
+        await line.Run("log", "show", "1", "--log", log);
+        Assert.Contains("--raw result|settings|board|readings|plot", line.Output, StringComparison.Ordinal);
+        var run = new ProgramProcess(line.Folder).Run("log", "show", "1", "--raw", "plot", "--log", log);
+        Assert.Equal(0, run.Exit);
+        Assert.Equal("svg", System.Xml.Linq.XDocument.Parse(run.Output).Root!.Name.LocalName);
+        Assert.Contains("Circulation-fan stage", run.Output, StringComparison.Ordinal);
+        Assert.Equal(2, await line.Run("log", "show", "1", "--raw", "rates", "--log", log));
+        await line.Run("log", "show", "1", "--raw", "settings", "--log", log);
+        Assert.Equal(
+            ["confidence", "bands", "law", "draws", "seed", "findFaults", "skipBadRows"], JsonDocument.Parse(line.Output).RootElement.EnumerateObject().Select(p => p.Name));
+    }
+
+    [Theory]
+    [InlineData("time")]
+    [InlineData("serial")]
+    public async Task A_trend_is_drawn(string by)
+    {
+        await File(WorkshopFiles.Faulty);
+        await File(WorkshopFiles.Healthy);
+        var picture = Path.Combine(line.Folder, "trend.svg");
+        Assert.Equal(0, await line.Run("log", "trend", "Q1", "--log", log, "--plot", picture, "--by", by));
+        Assert.Contains("Q1 gain: 2 values", await System.IO.File.ReadAllTextAsync(picture, TestContext.Current.CancellationToken), StringComparison.Ordinal);
+        Assert.Contains("Q1 drop: 2 values", await System.IO.File.ReadAllTextAsync(Path.Combine(line.Folder, "trend-2.svg"), TestContext.Current.CancellationToken), StringComparison.Ordinal);
+        Assert.Equal(2, await line.Run("log", "trend", "Q1", "--log", log, "--plot", Path.Combine(line.Folder, "trend.gif")));
+    }
+
+    [Fact]
+    public void A_log_set_once_files_every_check_until_it_is_set_otherwise()
+    {
+        Assert.SkipWhen(OperatingSystem.IsWindows(), "the configuration folder cannot be moved there");
+        var program = new ProgramProcess(line.Folder);
+        var readings = line.File("readings.csv", WorkshopFiles.Healthy);
+        Assert.DoesNotContain("filed", program.Run("check", board, readings).Error, StringComparison.Ordinal);
+        var set = program.Run("log", "default", "shop log.db", "--every-check");
+        Assert.Equal(0, set.Exit);
+        Assert.Contains($"log: {Path.Combine(line.Folder, "shop log.db")}", set.Output, StringComparison.Ordinal);
+        Assert.Contains("filed as record 1", program.Run("check", board, readings).Error, StringComparison.Ordinal);
+        Assert.DoesNotContain("filed", program.Run("check", board, readings, "--no-log").Error, StringComparison.Ordinal);
+        Assert.Contains("Circulation-fan stage", program.Run("log", "list").Output, StringComparison.Ordinal);
+        Assert.True(System.IO.File.Exists(Path.Combine(line.Folder, "shop log.db")));
+        if (!OperatingSystem.IsWindows())         Assert.Equal(UnixFileMode.UserRead | UnixFileMode.UserWrite, System.IO.File.GetUnixFileMode(Path.Combine(line.Folder, "config", "benchcheck", "settings.json")));
+        program.Run("log", "default", "--usual", "--on-request");
+        Assert.DoesNotContain("filed", program.Run("check", board, readings).Error, StringComparison.Ordinal);
+        Assert.Contains("filed as record 1", program.Run("check", board, readings, "--log").Error, StringComparison.Ordinal);
+        Assert.True(System.IO.File.Exists(Path.Combine(line.Folder, "data", "benchcheck", "bench-log.db")));
+    }
+
+    [Fact]
+    public void Damaged_settings_are_said_plainly_and_a_password_is_never_shown()
+    {
+        Assert.SkipWhen(OperatingSystem.IsWindows(), "the configuration folder cannot be moved there");
+        var program = new ProgramProcess(line.Folder);
+        Directory.CreateDirectory(Path.Combine(line.Folder, "config", "benchcheck"));
+        line.File("config/benchcheck/settings.json", "{ \"log\": ");
+        var refused = program.Run("log", "list");
+        Assert.Equal(2, refused.Exit);
+        Assert.Contains("settings.json", refused.Error, StringComparison.Ordinal);
+        var set = program.Run("log", "default", "Host=shop;Database=bench;Username=anna;Password=tomatoes");
+        Assert.Contains("log: database bench on shop", set.Output, StringComparison.Ordinal);
+        Assert.DoesNotContain("tomatoes", set.Output + set.Error, StringComparison.Ordinal);
+    }
+
+    [Fact]
     public async Task Hostile_names_do_not_steer_the_terminal()
     {
         var hostile = line.File("hostile.toml", WorkshopFiles.Board.Replace("Circulation-fan stage", "Fan \\u001B[2J [red]stage[/]", StringComparison.Ordinal));

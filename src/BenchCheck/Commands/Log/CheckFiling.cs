@@ -1,6 +1,8 @@
 using System.Reflection;
+using System.Text;
 using BenchCheck.Core.Checking;
 using BenchCheck.Files;
+using BenchCheck.Plots;
 using BenchCheck.Records;
 
 namespace BenchCheck.Commands.Log;
@@ -31,7 +33,7 @@ internal sealed class CheckFiling : IDisposable
     /// <exception cref="BenchLogException">it could not be filed</exception>
     public LogEntry Add(CheckResult result) => log.Append(new Filing(
         DateTimeOffset.UtcNow, Program, result.BoardTitle, result.Serial, ResultWords.Of(result.Verdict), settings, ResultJson.Line(result), board, readings,
-        rates is null ? null : rates.AsMemory()))[0];
+        rates is null ? default(ReadOnlyMemory<byte>?) : rates, Encoding.UTF8.GetBytes(ReadingPlot.Of(result).ToSvg())))[0];
 
     public void Dispose() => log.Dispose();
 }

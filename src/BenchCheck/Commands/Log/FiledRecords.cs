@@ -1,4 +1,5 @@
 using System.CommandLine;
+using System.Globalization;
 using BenchCheck.Core.Quantities;
 using BenchCheck.Files;
 using BenchCheck.Records;
@@ -23,6 +24,10 @@ internal static class FiledRecords
     /// <summary>"2026-03-01 09:30:12".</summary>
     public static string Time(LogEntry entry) => entry.FiledAt.Length >= 19 ? entry.FiledAt[..19].Replace('T', ' ') : entry.FiledAt;
 
+    /// <summary>When it was filed; null where that cannot be read.</summary>
+    public static DateTimeOffset? Instant(LogEntry entry) =>
+        DateTimeOffset.TryParse(entry.FiledAt, CultureInfo.InvariantCulture, DateTimeStyles.AssumeUniversal, out var time) ? time : null;
+
     public static Style StyleOf(string verdict) => verdict switch
     {
         "agrees" or "in" => new Style(Color.Green),
@@ -41,5 +46,5 @@ internal static class FiledRecords
     public static string Limits(FiledEstimate estimate) =>
         double.IsNaN(estimate.NominalLow) ? "?" : EngineeringNotation.Range(estimate.NominalLow, estimate.NominalHigh, UnitOf(estimate.Unit));
 
-    private static Unit UnitOf(string symbol) => new(symbol);
+    public static Unit UnitOf(string symbol) => new(symbol);
 }

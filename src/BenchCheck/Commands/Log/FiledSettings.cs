@@ -10,6 +10,7 @@ internal sealed record FiledSettings(double Confidence, BandMethod Bands, Juncti
 {
     private static readonly JsonSerializerOptions Json = new(JsonSerializerDefaults.Web) { Converters = { new JsonStringEnumConverter(JsonNamingPolicy.KebabCaseLower) } };
 
+    [JsonIgnore]
     public CheckSettings Settings => CheckSettings.Default with
     {
         Confidence = Confidence, Bands = Bands, Law = Law, Draws = Draws, Seed = Seed, FindFaults = FindFaults,

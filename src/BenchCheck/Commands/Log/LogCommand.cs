@@ -17,5 +17,6 @@ internal static class LogCommand
     {
         LogListCommand.Create(terminal), LogShowCommand.Create(terminal), LogAgainCommand.Create(terminal), LogCompareCommand.Create(terminal),
         LogTrendCommand.Create(terminal), LogExportCommand.Create(terminal), LogCheckCommand.Create(terminal),
+        LogDefaultCommand.Create(terminal),
     };
 }

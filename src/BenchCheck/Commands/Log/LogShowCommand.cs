@@ -14,6 +14,7 @@ internal static class LogShowCommand
     private const string Board = "board";
     private const string Readings = "readings";
     private const string Rates = "rates";
+    private const string Plot = "plot";
 
     public static Command Create(Terminal terminal)
     {
@@ -23,11 +24,12 @@ internal static class LogShowCommand
             Examples:
               benchcheck log show 17
               benchcheck log show 17 --raw readings > readings.csv
+              benchcheck log show 17 --raw plot > plot.svg
             """);
         var number = FiledRecords.Number("RECORD");
         var choice = LogChoice.Of(command);
-        var raw = new Option<string?>("--raw") { Description = "Only one part of it, byte for byte: result (JSON), settings (JSON), board, readings or rates.", HelpName = "PART" };
-        raw.AcceptOnlyFromAmong(Result, Settings, Board, Readings, Rates);
+        var raw = new Option<string?>("--raw") { Description = "Only one part of it, byte for byte: result (JSON), settings (JSON), plot (SVG), board, readings or rates.", HelpName = "PART" };
+        raw.AcceptOnlyFromAmong(Result, Settings, Board, Readings, Rates, Plot);
         command.Add(number);
         command.Add(raw);
         command.SetAction(parsed =>
@@ -55,9 +57,9 @@ internal static class LogShowCommand
             return ExitCode.Agrees;
         }
 
-        if ((part switch { Board => record.BoardFile, Readings => record.ReadingsFile, _ => record.RatesFile }) is not { } hash || log.Input(hash) is not { } bytes)
+        if ((part switch { Board => record.BoardFile, Readings => record.ReadingsFile, Plot => record.Plot, _ => record.RatesFile }) is not { } hash || log.Input(hash) is not { } bytes)
         {
-            terminal.Error.WriteLine($"record {number} has no {part} file");
+            terminal.Error.WriteLine($"record {number} has no {part}");
             return ExitCode.Unusable;
         }
 
@@ -66,6 +68,9 @@ internal static class LogShowCommand
         output.Write(bytes);
         return ExitCode.Agrees;
     }
+
+    private static IEnumerable<string> Parts(LogRecord record) =>
+        [Result, Settings, Board, Readings, .. record.RatesFile is null ? Array.Empty<string>() : [Rates], .. record.Plot is null ? Array.Empty<string>() : [Plot]];
 
     private static void Write(IAnsiConsole console, LogRecord record, ResultSummary result)
     {
@@ -96,6 +101,7 @@ internal static class LogShowCommand
         }
 
         Layout.Heading(console, "On record");
+        Layout.Entry(console, "files", string.Create(CultureInfo.InvariantCulture, $"log show {entry.Number} --raw {string.Join('|', Parts(record))}"));
         Layout.Entry(console, "settings", record.Settings);
         Layout.Entry(console, "hash", entry.Hash);
     }

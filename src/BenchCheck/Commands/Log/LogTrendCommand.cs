@@ -1,6 +1,7 @@
 using System.CommandLine;
 using System.Globalization;
 using BenchCheck.Files;
+using BenchCheck.Plots;
 using BenchCheck.Records;
 using Spectre.Console;
 
@@ -9,18 +10,27 @@ namespace BenchCheck.Commands.Log;
 /// <summary><c>benchcheck log trend PARAMETER</c>: one parameter over the records.</summary>
 internal static class LogTrendCommand
 {
+    private const string Time = "time";
+    private const string Serial = "serial";
+
     public static Command Create(Terminal terminal)
     {
         var command = new Command("trend", """
             Follows one parameter over the records, with the limits of the parts list.
 
-            Example:
+            Examples:
               benchcheck log trend "Q1 gain" --board "Circulation-fan stage" --verdict agrees
+              benchcheck log trend "Q1 gain" --plot gain.png --by serial
             """);
         var parameter = new Argument<string>("PARAMETER") { Description = "Part and parameter as estimates name them, such as \"Q1 gain\"; a part alone for all of its parameters." };
         var choice = LogChoice.Of(command);
         var search = new LogSearch(command);
+        var plot = new Option<string?>("--plot") { Description = "Also draw it: .png or .svg; each further parameter or board gets its number before the ending.", HelpName = "FILE" };
+        var by = new Option<string>("--by") { Description = "What the picture runs along: time or serial.", DefaultValueFactory = _ => Time, HelpName = "WHAT" };
+        by.AcceptOnlyFromAmong(Time, Serial);
         command.Add(parameter);
+        command.Add(plot);
+        command.Add(by);
         command.SetAction(parsed =>
         {
             using var log = BenchLog.OpenExisting(choice.Place(parsed));
@@ -33,10 +43,33 @@ internal static class LogTrendCommand
                 return ExitCode.Unusable;
             }
 
-            foreach (var group in points.GroupBy(p => (p.Entry.BoardTitle, p.Estimate.Name))) Write(terminal.Console, group.Key.BoardTitle, group.Key.Name, [.. group]);
+            var number = 0;
+            foreach (var group in points.GroupBy(p => (p.Entry.BoardTitle, p.Estimate.Name)))
+            {
+                Write(terminal.Console, group.Key.BoardTitle, group.Key.Name, [.. group]);
+                if (parsed.GetValue(plot) is not { } path) continue;
+                var trend = TrendOf(group.Key.BoardTitle, group.Key.Name, [.. group]);
+                var figure = parsed.GetValue(by) == Serial ? TrendPlot.InOrder(trend) : TrendPlot.InTime(trend);
+                if (figure.Save(NumberedPath.Of(path, number++)) is not { } fault) continue;
+                terminal.Error.WriteLine(Printable.Text(fault.ToString()));
+                return ExitCode.Unusable;
+            }
+
             return ExitCode.Agrees;
         });
         return command;
+    }
+
+    /// <summary>The limits are those of the newest record: a parts list may have been changed since the first.</summary>
+    private static Trend TrendOf(string board, string name, (LogEntry Entry, FiledEstimate Estimate)[] points)
+    {
+        var newest = points[^1].Estimate;
+        return new Trend(
+            board, name, FiledRecords.UnitOf(newest.Unit),
+            [
+                .. points.Select(p => new TrendPoint(
+                    p.Entry.Serial ?? string.Create(CultureInfo.InvariantCulture, $"record {p.Entry.Number}"), FiledRecords.Instant(p.Entry), p.Estimate.Value, p.Estimate.Low, p.Estimate.High)),
+            ], new Limits(newest.NominalLow, newest.Nominal, newest.NominalHigh));
     }
 
     private static void Write(IAnsiConsole console, string board, string name, (LogEntry Entry, FiledEstimate Estimate)[] points)
