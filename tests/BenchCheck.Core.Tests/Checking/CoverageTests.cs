@@ -10,6 +10,7 @@ namespace BenchCheck.Core.Tests.Checking;
 /// <summary>
 /// Do the 95 % intervals cover what they claim? Simulation of 2,000 healthy boards, seeded; parts drawn from the fit's own priors, and uniformly
 /// within their tolerances. Counts of meter scale error and least digits drawn likewise. The verdict's false-alarm rate is counted on the same boards.
+/// Likewise 1,000 two-stage amplifiers with gains and small-signal resistances among their readings.
 /// </summary>
 public class CoverageTests
 {
@@ -18,7 +19,7 @@ public class CoverageTests
     [Fact]
     public void Intervals_cover_93_to_97_percent_when_parts_follow_the_priors_of_the_fit()
     {
-        var (gain, resistance, alarms) = Simulate((random, parameter) => parameter.Mean + parameter.Sigma * Gaussian(random));
+        var (gain, resistance, alarms) = Simulate(WorkshopBoards.FanStage(), Boards, (random, parameter) => parameter.Mean + parameter.Sigma * Gaussian(random));
         Assert.InRange(gain, 0.93, 0.97);
         Assert.InRange(resistance, 0.93, 0.97);
         Assert.InRange(alarms, 0, 0.05);
@@ -27,27 +28,35 @@ public class CoverageTests
     [Fact]
     public void Intervals_cover_at_least_93_percent_when_parts_are_uniform_within_their_tolerances()
     {
-        var (gain, resistance, alarms) = Simulate((random, parameter) => parameter.Mean + parameter.Sigma * Math.Sqrt(3) * (2 * random.NextDouble() - 1));
+        var (gain, resistance, alarms) = Simulate(WorkshopBoards.FanStage(), Boards, (random, parameter) => parameter.Mean + parameter.Sigma * Math.Sqrt(3) * (2 * random.NextDouble() - 1));
         Assert.InRange(gain, 0.93, 1);
         Assert.InRange(resistance, 0.93, 1);
         Assert.InRange(alarms, 0, 0.05);
     }
 
-    private static (double Gain, double Resistance, double Alarms) Simulate(Func<Random, FitParameter, double> draw)
+    [Fact]
+    public void Intervals_cover_93_to_97_percent_with_small_signal_readings_too()
     {
-        var bench = WorkshopBoards.FanStage();
+        var (gain, resistance, alarms) = Simulate(WorkshopBoards.TwoStageAmplifier(), Boards / 2, (random, parameter) => parameter.Mean + parameter.Sigma * Gaussian(random));
+        Assert.InRange(gain, 0.93, 0.97);
+        Assert.InRange(resistance, 0.93, 0.97);
+        Assert.InRange(alarms, 0, 0.05);
+    }
+
+    private static (double Gain, double Resistance, double Alarms) Simulate(Bench bench, int boards, Func<Random, FitParameter, double> draw)
+    {
         var random = new Random(20260401);
         var solver = new NetworkSolver(JunctionLaw.Exponential);
         var fit = new EvidenceFit();
-        var nominal = Read(bench, WorkshopBoards.EveryNode(bench));
+        var nominal = Read(bench, WorkshopBoards.Everything(bench));
         var truthModel = new BoardModel(bench.Board, nominal.Probes, nominal.HasScaleError, solver);
         var values = new double[nominal.Measured.Length];
         truthModel.Predict([.. truthModel.Parameters.Select(p => p.Mean)], values, []);
         int gainIn = 0, gains = 0, resistanceIn = 0, resistances = 0, alarms = 0;
-        for (var board = 0; board < Boards; board++)
+        for (var board = 0; board < boards; board++)
         {
             // The ranges follow the nominal values, so that the meter's scale errors are the same parameters for truth and fit.
-            var plan = Read(bench, [.. WorkshopBoards.EveryNode(bench).Select((r, i) => r with { Value = values[i] })]);
+            var plan = Read(bench, [.. WorkshopBoards.Everything(bench).Select((r, i) => r with { Value = values[i] })]);
             var model = new BoardModel(bench.Board, plan.Probes, plan.HasScaleError, solver);
             double[] truth = [.. model.Parameters.Select(p => draw(random, p))];
             var measured = new double[values.Length];
@@ -68,7 +77,7 @@ public class CoverageTests
             if (VerdictRule.Verdict(p, 0.05) == BoardVerdict.Disagrees) alarms++;
         }
 
-        return ((double)gainIn / gains, (double)resistanceIn / resistances, (double)alarms / Boards);
+        return ((double)gainIn / gains, (double)resistanceIn / resistances, (double)alarms / boards);
     }
 
     private static ReadingPlan Read(Bench bench, System.Collections.Immutable.ImmutableArray<Reading> readings) => ReadingPlan.Of(bench, new ReadingSet(null, readings));
