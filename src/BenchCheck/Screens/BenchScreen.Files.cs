@@ -51,7 +51,7 @@ internal sealed partial class BenchScreen
             var path = values[0].Trim();
             if (BoardTemplate.Write(ref path, values[1].Trim()) is { } refused) return refused;
             Open(path, null, false);
-            Say($"Put your parts into {path} in place of the examples, then open it again (Ctrl+P).", Tone.Doubt);
+            Say($"F3 puts your parts in place of the examples; or edit {Path.GetFileName(path)}: it is taken over as you save it.", Tone.Doubt);
             return null;
         }, ShowStart));
 

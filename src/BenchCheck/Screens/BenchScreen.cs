@@ -1,4 +1,5 @@
 using System.Collections.Immutable;
+using BenchCheck.Core.Checking;
 using BenchCheck.Files;
 using Terminal.Gui.Input;
 using Terminal.Gui.ViewBase;
@@ -85,7 +86,7 @@ internal sealed partial class BenchScreen : Runnable
     public void Render()
     {
         var width = Math.Max(20, Viewport.Width);
-        foot.Lines = [ScreenLine.Of(" " + (panel?.Keys ?? FootKeys()), Tone.Chosen)];
+        foot.Lines = [ScreenLine.Of(" " + (panel?.Keys ?? FootKeys(width)), Tone.Chosen)];
         var shows = panel is null && bench is not null;
         foreach (var pane in (ReadOnlySpan<View>)[head, table, below, beside, third, prompt, entry]) pane.Visible = shows;
         if (panel is null && bench is { } b) RenderWork(b, width);
@@ -159,8 +160,15 @@ internal sealed partial class BenchScreen : Runnable
         }
     }
 
-    /// <summary>Says that the table goes on where it does not fit its place.</summary>
+    /// <summary>Says what the table does not show: rows for which there is no room, flagged readings of other conditions.</summary>
     private string OutOfSight(BenchSession session)
+    {
+        var elsewhere = (session.Result?.Readings ?? []).Where(r => r.Verdict != ReadingVerdict.In && r.Reading.Condition != session.Condition)
+            .GroupBy(r => r.Reading.Condition).Select(c => $"{c.Count()} flagged in {c.Key}").ToArray();
+        return string.Join("   ", [.. RowsNotShown(session), .. elsewhere.Length == 0 || view == ScreenView.Parts ? [] : new[] { string.Join(", ", elsewhere) + " (F5)" }]);
+    }
+
+    private string[] RowsNotShown(BenchSession session)
     {
         var (at, count) = view switch
         {
@@ -168,7 +176,7 @@ internal sealed partial class BenchScreen : Runnable
             ScreenView.Readings => (session.RowIndex, session.Rows.Length),
             _ => (0, 0),
         };
-        return count >= table.Frame.Height ? $"row {at + 1} of {count}" : "";
+        return count >= table.Frame.Height ? [$"row {at + 1} of {count}"] : [];
     }
 
     private int RowsWanted() => bench is not { } b ? 0 : view switch
@@ -178,7 +186,9 @@ internal sealed partial class BenchScreen : Runnable
         _ => Math.Max(b.Session.Rows.Length, 1) + 1,
     };
 
-    private static string FootKeys() => "F1 help  F2 readings  F3 parts  F4 plot  F8 cautions  F9 menu  ^L log  ^Q quit";
+    private static string FootKeys(int width) => width < 80
+        ? "F1 help  F2 F3 F4 views  F9 menu  ^L log  ^Q quit"
+        : "F1 help  F2 readings  F3 parts  F4 plot  F8 cautions  F9 menu  ^L log  ^Q quit";
 
     private void Put(Panel next)
     {

@@ -145,7 +145,7 @@ internal sealed record BenchSession
     public BenchSession SavedBoard(BoardText board) => this with { saved = saved with { Board = board } };
 
     /// <summary>What a healthy board shows; one of another version of the board changes nothing.</summary>
-    public BenchSession Predicted(Bench bench, Prediction prediction) => ReferenceEquals(bench, Bench) ? this with { Prediction = prediction } : this;
+    public BenchSession Predicted(Bench bench, Prediction prediction) => ReferenceEquals(bench, Bench) ? (this with { Prediction = prediction }).InSight() : this;
 
     /// <summary>The result of a check; one of older readings changes nothing.</summary>
     public BenchSession Checked(long version, CheckResult result, bool isComplete)

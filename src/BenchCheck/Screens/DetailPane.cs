@@ -19,6 +19,8 @@ internal static class DetailPane
         var unit = row.Place.Quantity.Unit();
         lines.Add(ScreenLine.Of($"{row.Place.Name(session.Bench.Board)}, {row.Place.Condition}", Tone.Strong));
         foreach (var (text, tone) in Comparison(row, unit)) lines.AddRange(ScreenLine.Paragraph(text, width, tone));
+        lines.AddRange(Suspects(session, row, unit, width));
+        if (row.Reading is { } reading) lines.AddRange(ScreenLine.Paragraph(Taken(reading, session.Bench, row.Result, unit), width, Tone.Dim, "Taken     "));
         var influences = row.Result?.Influences ?? row.Expected?.Influences ?? [];
         if (!influences.IsDefaultOrEmpty)
         {
@@ -26,8 +28,6 @@ internal static class DetailPane
                 string.Join("; ", influences.Take(MostParts).Select(i => Moves(i, unit))), width, Tone.Plain, "Moved by  "));
         }
 
-        lines.AddRange(Suspects(session, row, unit, width));
-        if (row.Reading is { } reading) lines.AddRange(ScreenLine.Paragraph(Taken(reading, session.Bench, row.Result, unit), width, Tone.Dim, "Taken     "));
         return lines.ToImmutable();
     }
 

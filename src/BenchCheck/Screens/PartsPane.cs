@@ -84,9 +84,12 @@ internal static class PartsPane
     private static ScreenLine Line(int width, string name, string kind, string listed, string estimate, string interval, string found, string power, Tone plain, Tone heat)
     {
         var spare = Math.Clamp((width - 80) / 5, 0, 8);
+        var hasInterval = width >= 80;
         return ScreenLine.Cells(
+        [
             new Cell(name, 6 + spare, plain), new Cell(kind, 11 + spare, plain), new Cell(listed, 13 + spare, plain, true), new Cell(estimate, 17 + spare, plain, true),
-            new Cell(interval, 14 + spare, plain, true), new Cell(found, 6, plain), new Cell(power, 7, heat, true));
+            .. hasInterval ? [new Cell(interval, 14 + spare, plain, true)] : Array.Empty<Cell>(), new Cell(found, 6, plain), .. width >= 66 ? [new Cell(power, 7, heat, true)] : Array.Empty<Cell>(),
+        ]);
     }
 
     private static Estimate? EstimateOf(CheckResult? result, string condition, Part part, PartParameter parameter)

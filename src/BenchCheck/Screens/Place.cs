@@ -23,6 +23,15 @@ internal sealed record Place(string Condition, ReadingQuantity Quantity, string 
         };
     }
 
+    /// <summary>The same for a narrow column: "C1/IN", "IN R in".</summary>
+    public string ShortName(Board board) => Quantity switch
+    {
+        ReadingQuantity.Gain => $"{At}/{Against}",
+        ReadingQuantity.InputResistance => $"{At} R in",
+        ReadingQuantity.OutputResistance => $"{At} R out",
+        _ => Name(board),
+    };
+
     private static Place Make(Board board, string condition, ReadingQuantity quantity, string at, string? against) =>
         new(condition, quantity, at, against ?? (quantity is ReadingQuantity.Current or ReadingQuantity.CurrentGain ? null : board.Reference));
 }

@@ -35,7 +35,7 @@ internal static class ReadingsPane
     private static ScreenLine Row(BenchSession session, ReadingRow row, ImmutableArray<double> explained, bool hasSuspect, bool isCursor, int width)
     {
         var unit = row.Place.Quantity.Unit();
-        var name = (isCursor ? "> " : "  ") + row.Place.Name(session.Bench.Board);
+        var name = (isCursor ? "> " : "  ") + (width < Wide ? row.Place.ShortName(session.Bench.Board) : row.Place.Name(session.Bench.Board));
         if (row.Reading is not { } reading)
         {
             return row.Expected is { } e
@@ -59,10 +59,15 @@ internal static class ReadingsPane
     {
         if (width < Wide)
         {
-            var narrow = Math.Max(8, width - 70);
+            // What the eye compares goes last: first the difference gives way, then the band.
+            var (hasBand, hasDifference) = (width >= 68, width >= 80);
+            var narrow = Math.Max(8, width - 40 - (hasBand ? 18 : 0) - (hasDifference ? 11 : 0));
             return ScreenLine.Cells(
-                new Cell(at, narrow, plain), new Cell(measured, 11, plain, true), new Cell(predicted, 9, plain, true), new Cell(band, 17, plain, true),
-                new Cell(difference, 10, plain, true), new Cell(en, 5, tone, true), new Cell(verdict, 10, tone));
+            [
+                new Cell(at, narrow, plain), new Cell(measured, 11, plain, true), new Cell(predicted, 9, plain, true),
+                .. hasBand ? [new Cell(band, 17, plain, true)] : Array.Empty<Cell>(), .. hasDifference ? [new Cell(difference, 10, plain, true)] : Array.Empty<Cell>(),
+                new Cell(en, 5, tone, true), new Cell(verdict, 10, tone),
+            ]);
         }
 
         var place = Math.Min(26, 14 + (width - Wide) / 3);

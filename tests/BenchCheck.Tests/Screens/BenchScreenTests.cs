@@ -178,6 +178,45 @@ public sealed class BenchScreenTests : IDisposable
         Assert.Contains("> B1", screen.Text);
     }
 
+    [Fact]
+    public void On_the_smallest_screen_the_verdict_is_still_there()
+    {
+        using var screen = new ScreenUnderTest(folder.Path, width: 60, height: 16);
+        screen.AwaitCheck();
+        screen.Press(Key.CursorDown, Key.CursorDown);
+        Assert.Matches(@"> C1 +11\.16 V +6\.7\d\d V +\+5\.\d OUT !", screen.Text);
+        Assert.Contains("^Q quit", screen.Text);
+    }
+
+    [Fact]
+    public void What_can_be_read_of_small_signals_is_listed_with_its_prediction()
+    {
+        File.WriteAllText(folder.In("amplifier.toml"), """
+            [parts]
+            V1 = { kind = "supply",    value = "12 V 1%", pins = { plus = "VCC", minus = "GND" } }
+            C1 = { kind = "capacitor", value = "10 uF",   pins = ["IN", "B1"] }
+            R1 = { kind = "resistor",  value = "470k 5%", pins = ["VCC", "B1"] }
+            R2 = { kind = "resistor",  value = "3k3 5%",  pins = ["VCC", "C1"] }
+            Q1 = { kind = "npn", gain = "100..300", pins = { collector = "C1", base = "B1", emitter = "GND" } }
+            [conditions.signal]
+            kind = "small-signal"
+            operating_point = "powered"
+            frequency = "1 kHz"
+            drive = { at = "IN", value = "5 mV", resistance = "600" }
+            [conditions.powered]
+
+            """);
+        using var screen = new ScreenUnderTest(folder.Path, "amplifier.toml");
+        Assert.Matches(@"C1/IN +- +-1\d\d\.\d", screen.Await(s => s.Contains("C1/IN ", StringComparison.Ordinal), "the gain"));
+    }
+
+    [Fact]
+    public void Flagged_readings_of_other_conditions_are_told_where_they_are_not_shown()
+    {
+        using var screen = new ScreenUnderTest(folder.Path, "frost-guard.toml");
+        Assert.Contains("4 flagged in frost (F5)", screen.AwaitCheck());
+    }
+
     [Theory]
     [InlineData(80, 24)]
     [InlineData(120, 40)]
