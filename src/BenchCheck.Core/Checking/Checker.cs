@@ -140,7 +140,7 @@ internal static class Checker
     private static string Reason(BoardVerdict verdict, int degrees, double pValue, double confidence, ImmutableArray<ReadingResult> results)
     {
         if (degrees == 0) return "Too few readings to compare with the parts list.";
-        var chance = pValue < 1e-4 ? "less than 1 in 10000" : string.Create(System.Globalization.CultureInfo.InvariantCulture, $"{100 * pValue:G2} %");
+        var chance = pValue < 1e-4 ? "less than 1 in 10000" : pValue > 0.99 ? "more than 99 %" : string.Create(System.Globalization.CultureInfo.InvariantCulture, $"{100 * pValue:G2} %");
         var outside = results.Count(r => r.Verdict == ReadingVerdict.Out);
         return verdict switch
         {
