@@ -122,6 +122,16 @@ internal sealed record BenchSession
         return Put(old, old with { Note = string.IsNullOrWhiteSpace(note) ? null : note.Trim() });
     }
 
+    /// <summary>Says which board it is that lies on the bench; two boards of a file cannot bear the same serial.</summary>
+    /// <param name="serial">empty for none</param>
+    public Parsed<BenchSession> WithSerial(string serial)
+    {
+        var named = string.IsNullOrWhiteSpace(serial) ? null : serial.Trim();
+        if (named == Readings.Serial) return this;
+        return Sets.Any(s => s.Serial == named) ? new TextFault($"serial {TextFault.Quote(named ?? "")}, which another board of this file bears", "a serial of its own")
+            : Changed(Readings with { Serial = named });
+    }
+
     /// <summary>Removes the reading at the cursor.</summary>
     public BenchSession Delete() => Row?.Reading is { } old ? Changed(Readings with { Readings = Readings.Readings.Remove(old) }) : this;
 

@@ -5,6 +5,7 @@ using BenchCheck.Core.Checking;
 using BenchCheck.Core.Diagnosis;
 using BenchCheck.Core.Quantities;
 using BenchCheck.Files;
+using BenchCheck.Plots;
 using BenchCheck.Records;
 
 namespace BenchCheck.Screens;
@@ -47,7 +48,7 @@ internal sealed class BoardRecords(Func<LogPlace> place)
             using var log = BenchLog.Open(place());
             return log.Append(new Filing(
                 DateTimeOffset.UtcNow, CheckFiling.Program, result.BoardTitle, result.Serial, ResultWords.Of(result.Verdict), FiledSettings.Text(settings, false), ResultJson.Line(result),
-                Encoding.UTF8.GetBytes(session.Board.Text), Encoding.UTF8.GetBytes(readings)))[0];
+                Encoding.UTF8.GetBytes(session.Board.Text), Encoding.UTF8.GetBytes(readings), Plot: Encoding.UTF8.GetBytes(ReadingPlot.Of(result).ToSvg())))[0];
         });
     }
 

@@ -339,9 +339,11 @@ public sealed class BenchScreenTests : IDisposable
     }
 
     [Fact]
-    public void A_check_is_filed_in_the_bench_log_and_looked_at_again()
+    public void A_check_is_filed_in_the_bench_log_under_its_serial_and_looked_at_again()
     {
         using var screen = new ScreenUnderTest(folder.Path, height: 60);
+        screen.AwaitCheck();
+        screen.Press(Key.K.WithCtrl).Type("0041").Press(Key.Enter);
         screen.AwaitCheck();
         screen.Press(Key.L.WithCtrl);
         screen.Await("Nothing is on record of \"Mist-valve driver\" yet");
@@ -351,6 +353,7 @@ public sealed class BenchScreenTests : IDisposable
         screen.Await("record 1");
         screen.Press(Key.CursorDown, Key.Enter);
         var drawn = screen.Await("Record 1");
+        Assert.Contains("Mist-valve driver, serial 0041", drawn);
         Assert.Matches(@"powered +C1 +11\.16 V +6\.7\d\d V +\+5\.\d out", drawn);
         Assert.Contains("R4 of another value", drawn);
         screen.Press(Key.Esc);
