@@ -6,9 +6,10 @@ namespace BenchCheck.Core.Batches;
 /// <summary>Finds the lot of greatest posterior from the likelihoods of its boards (empirical Bayes).</summary>
 /// <remarks>
 /// <para>
-/// Boards k with likelihoods (Λ_k, η_k), φ_k ~ N(μ, T), T = diag τ². The parts list says of the lot's mean what it says of a part, μ ~ N(φ₀, σ²), and of the
-/// spread as much as one board whose part lies σ off; of an unknown it says nothing. With C_k = (Λ_k + T⁻¹)⁻¹ and m̂_k = C_k (η_k + T⁻¹ μ) the greatest
-/// posterior has μ = V (Σ T⁻¹ C_k η_k + φ₀/σ²), V⁻¹ = Σ (T⁻¹ − T⁻¹ C_k T⁻¹) + diag 1/σ², and τ² = (Σ (m̂_k − μ)² + σ²) / (Σ γ_k + 1), γ_k = 1 − C_k/τ²
+/// Boards k with likelihoods (Λ_k, η_k), φ_k ~ N(μ, T), T = diag τ². What the parts list says of a part, N(φ₀, σ²), is shared between the lot's
+/// mean and the spread within it, μ ~ N(φ₀, σ² − τ²), never less than a tenth of σ²; of the spread it says as much as one board whose part lies σ off; of an
+/// unknown it says nothing. With C_k = (Λ_k + T⁻¹)⁻¹ and m̂_k = C_k (η_k + T⁻¹ μ) the greatest
+/// posterior has μ = V (Σ T⁻¹ C_k η_k + W φ₀), V⁻¹ = Σ (T⁻¹ − T⁻¹ C_k T⁻¹) + W with W = diag 1/(σ² − τ²), and τ² = (Σ (m̂_k − μ)² + σ²) / (Σ γ_k + 1), γ_k = 1 − C_k/τ²
 /// the share of board k's estimate that its own readings determine (MacKay, Neural Computation 4 (1992) 415): both are taken in turn until they stand still.
 /// </para>
 /// <para>
@@ -21,6 +22,8 @@ internal static class LotMaximum
 {
     private const int MostSteps = 500;
     private const double StandsStill = 1e-7;
+
+    private const double LeastShareOfMean = 0.1;
 
     /// <summary>Below this, a ten-thousandth of a part or of a volt, boards count as alike.</summary>
     private const double LeastVariance = 1e-8;
@@ -40,7 +43,7 @@ internal static class LotMaximum
         {
             cancel.ThrowIfCancellationRequested();
             Parallel.For(0, boards.Count, k => steps[k] = boards[k].Step(tau2));
-            var mean = Mean(parameters, steps, posterior);
+            var mean = Mean(parameters, tau2, steps, posterior);
             moved = 0;
             var next = new double[n];
             for (var i = 0; i < n; i++)
@@ -74,7 +77,7 @@ internal static class LotMaximum
 
     /// <summary>The lot's mean at the spreads that the steps were made with.</summary>
     /// <param name="posterior">receives its covariance V, n×n</param>
-    private static double[] Mean(ImmutableArray<FitParameter> parameters, LotStep[] steps, double[] posterior)
+    private static double[] Mean(ImmutableArray<FitParameter> parameters, double[] tau2, LotStep[] steps, double[] posterior)
     {
         var n = parameters.Length;
         Array.Clear(posterior);
@@ -82,7 +85,8 @@ internal static class LotMaximum
         for (var i = 0; i < n; i++)
         {
             if (parameters[i].IsUnknown) continue;
-            var weight = 1 / (parameters[i].Sigma * parameters[i].Sigma);
+            var listed = parameters[i].Sigma * parameters[i].Sigma;
+            var weight = 1 / Math.Max(listed - tau2[i], LeastShareOfMean * listed);
             posterior[i * n + i] = weight;
             mean[i] = weight * parameters[i].Mean;
         }

@@ -38,7 +38,7 @@ public sealed class LotMaximumTests
     }
 
     [Fact]
-    public void The_parts_list_counts_for_the_mean_as_a_tolerance_and_for_the_spread_as_one_board()
+    public void The_parts_list_counts_for_the_mean_with_what_the_spread_leaves_of_it_and_for_the_spread_as_one_board()
     {
         double[] s = [0.05, 0.2, 0.1, 0.07, 0.3, 0.1, 0.02, 0.15, 0.4, 0.1];
         var parameter = Pool(Parameter("Q1"), Y, s).Parameters[0];
@@ -48,7 +48,7 @@ public sealed class LotMaximumTests
 
         double LogPosterior(double m, double t) =>
             -0.5 * (Y.Zip(s, (v, u) => Math.Log(t * t + u * u) + (v - m) * (v - m) / (t * t + u * u)).Sum()
-                + Math.Log(t * t) + PriorSigma * PriorSigma / (t * t) + (m - PriorMean) * (m - PriorMean) / (PriorSigma * PriorSigma));
+                + Math.Log(t * t) + PriorSigma * PriorSigma / (t * t) + (m - PriorMean) * (m - PriorMean) / (PriorSigma * PriorSigma - tau * tau));
     }
 
     [Fact]
@@ -71,8 +71,9 @@ public sealed class LotMaximumTests
         var lot = LotMaximum.Of([Parameter("Q1"), Parameter("Q2")], boards, [PriorMean, PriorMean], 20, TestContext.Current.CancellationToken);
         Assert.Equal(0.1, lot.Parameters[0].Mean - lot.Parameters[1].Mean, 0.002);
         Assert.Equal(PriorMean, (lot.Parameters[0].Mean + lot.Parameters[1].Mean) / 2, 1e-6);
-        // The sum stays as uncertain as the parts list leaves it: σ/√2 each.
-        Assert.Equal(PriorSigma / Math.Sqrt(2), lot.Parameters[0].MeanUncertainty, 0.01);
+        // The sum stays as uncertain as the parts list leaves it: σ/√2 each, the spread within the lot included.
+        var (mean, spread) = (lot.Parameters[0].MeanUncertainty, lot.Parameters[0].Spread);
+        Assert.Equal(PriorSigma / Math.Sqrt(2), Math.Sqrt(mean * mean + spread * spread / 2), 0.01);
     }
 
     private static (LotParameter[] Parameters, LotBoard[] Boards) Pool(FitParameter parameter, double[] y, double[] s)
