@@ -11,6 +11,7 @@ namespace BenchCheck.Screens;
 internal sealed partial class BenchScreen : Runnable
 {
     private const int PanesFrom = 112;
+    private const int MostMessageLines = 4;
     private static readonly TimeSpan LookAtDisk = TimeSpan.FromSeconds(2);
 
     private readonly UserFolder folder;
@@ -114,7 +115,7 @@ internal sealed partial class BenchScreen : Runnable
                 ScreenView.Parts => ScreenLine.Of("Enter edit   F6 add   Del remove   Ctrl+U undo   Esc back to the readings", Tone.Dim),
                 _ => ScreenLine.Of("Up Down choose   F5 next condition   Ctrl+E export   Esc back to the readings", Tone.Dim),
             },
-            message.Text.Length > 0 ? ScreenLine.Of(message.Text, message.Tone) : ScreenLine.Of(OutOfSight(session), Tone.Dim),
+            .. message.Text.Length > 0 ? MessageLines(width) : [ScreenLine.Of(OutOfSight(session), Tone.Dim)],
         ];
         entry.Visible = view == ScreenView.Readings;
         (table.Lines, below.Lines, beside.Lines, third.Lines) = view switch
@@ -131,7 +132,8 @@ internal sealed partial class BenchScreen : Runnable
     private void Arrange()
     {
         var (width, height) = (Viewport.Width, Viewport.Height);
-        var free = height - 1 - 3 - 2 - 1;
+        var said = MessageLines(width).Length;
+        var free = height - 1 - 3 - (1 + said) - 1;
         var rows = Math.Clamp(RowsWanted(), 2, Math.Max(2, free - (view == ScreenView.Readings ? Math.Clamp(height / 3, 5, 18) : 6)));
         var panes = Math.Max(1, free - rows);
         var y = Put(menu, 0, 0, width, 1);
@@ -139,7 +141,7 @@ internal sealed partial class BenchScreen : Runnable
         y = Put(table, 0, y, width, rows);
         var label = Math.Min(width / 2, prompt.Lines is [var first, ..] ? first.Text.Length + 1 : 20);
         Put(entry, label, y, Math.Max(1, Math.Min(24, width - label)), 1);
-        y = Put(prompt, 0, y, width, 2);
+        y = Put(prompt, 0, y, width, 1 + said);
         var isWide = width >= PanesFrom;
         var hasThree = view == ScreenView.Readings && isWide;
         var hasTwo = view == ScreenView.Readings && !showsDetail;
@@ -216,9 +218,13 @@ internal sealed partial class BenchScreen : Runnable
         Render();
     }
 
+    /// <summary>A message is said whole, on as many lines as it takes.</summary>
+    private ImmutableArray<ScreenLine> MessageLines(int width) => [.. ScreenLine.Paragraph(message.Text, Math.Max(20, width), message.Tone).Take(MostMessageLines)];
+
     private void Say(string? text, Tone tone = Tone.Plain)
     {
         message = (text ?? "", tone);
+        SetNeedsLayout();
         Render();
     }
 
@@ -273,7 +279,7 @@ internal sealed partial class BenchScreen : Runnable
         if (b.HasOnlooker != hasOnlooker)
         {
             hasOnlooker = !hasOnlooker;
-            Say(hasOnlooker ? "Another screen has opened these readings too: it looks on, entries are made here." : "The other screen is closed.", Tone.Doubt);
+            Say(hasOnlooker ? "Another screen has opened these readings too; it looks on." : "The other screen is closed.", Tone.Doubt);
         }
 
         if (b.FollowBoard() is { } news)
