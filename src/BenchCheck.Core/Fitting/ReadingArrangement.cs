@@ -36,7 +36,8 @@ internal sealed class ReadingArrangement(Board board, ParameterTable table, IRea
     private DcSetup WithAmmeter(Condition condition, int reading)
     {
         var probe = probes[reading];
-        var ammeter = AmmeterAt(probe.At, probe.Function.BurdenVolts / probe.Range);
+        if (AmmeterAt(probe.At, probe.Function.BurdenVolts / probe.Range) is not { } ammeter)
+            return new DcSetup(solver, NetworkCompiler.Compile(board, table, condition), [reading], [new Measurement(-1, -1)]);
         var network = NetworkCompiler.Compile(board, table, condition, ammeter);
         return new DcSetup(solver, network, [reading], [new Measurement(network.RowOf(ammeter), -1)]);
     }
@@ -64,7 +65,7 @@ internal sealed class ReadingArrangement(Board board, ParameterTable table, IRea
         Ammeter[] ammeters =
         [
             .. readings.Select(j => probes[j]).Where(p => p.Quantity is ReadingQuantity.Current or ReadingQuantity.CurrentGain)
-                .SelectMany(p => new[] { p.At, p.Against }).OfType<string>().Distinct().Select(at => AmmeterAt(at, 0)),
+                .SelectMany(p => new[] { p.At, p.Against }).OfType<string>().Distinct().Select(at => AmmeterAt(at, 0)).OfType<Ammeter>(),
         ];
         var signal = NetworkCompiler.CompileSmallSignal(board, table, Find(condition.OperatingPoint!), ammeters);
         return new SmallSignalSetup(
@@ -74,20 +75,21 @@ internal sealed class ReadingArrangement(Board board, ParameterTable table, IRea
     private SmallSignalMeasurement Connect(Network network, Drive? drive, Probe probe)
     {
         Pair Nodes(string at, string? against) => new(network.IndexOf(at), network.IndexOf(against ?? board.Reference));
-        Pair Joint(string at) => new(network.RowOf(AmmeterAt(at, 0)), -1);
+        Pair Joint(string at) => AmmeterAt(at, 0) is { } ammeter ? new(network.RowOf(ammeter), -1) : Pair.None;
         var driven = drive is null ? Pair.None : Nodes(drive.At, drive.Against);
         var load = 1 / probe.Meter.InputOhms;
         switch (probe.Quantity)
         {
             case ReadingQuantity.Gain:
-                var input = Nodes(probe.Against!, null);
-                return SmallSignalMeasurement.Ratio(Nodes(probe.At, null), input, drive is null ? input : driven, load, probe.IsMagnitude);
+                var from = Nodes(probe.Against!, null);
+                return SmallSignalMeasurement.Ratio(Nodes(probe.At, null), from, drive is null ? from : driven, load, probe.IsMagnitude);
             case ReadingQuantity.CurrentGain when probe.Against is null:
                 return SmallSignalMeasurement.Ratio(Joint(probe.At), Pair.None, driven, 0, probe.IsMagnitude);
             case ReadingQuantity.CurrentGain:
-                var (part, pin) = JointOf(probe.Against!);
-                return SmallSignalMeasurement.Ratio(
-                    Joint(probe.At), Joint(probe.Against!), drive is null ? Nodes(board.Find(part)!.Nodes[pin], null) : driven, 0, probe.IsMagnitude);
+                return AmmeterAt(probe.Against!, 0) is { } input
+                    ? SmallSignalMeasurement.Ratio(
+                        Joint(probe.At), Joint(probe.Against!), drive is null ? Nodes(board.Find(input.Part)!.Nodes[input.Pin], null) : driven, 0, probe.IsMagnitude)
+                    : SmallSignalMeasurement.Ratio(Pair.None, Pair.None, driven, 0, probe.IsMagnitude);
             case ReadingQuantity.InputResistance:
                 return SmallSignalMeasurement.Impedance(Nodes(probe.At, probe.Against), Pair.None, 0);
             case ReadingQuantity.OutputResistance:
@@ -101,17 +103,12 @@ internal sealed class ReadingArrangement(Board board, ParameterTable table, IRea
         }
     }
 
-    private Ammeter AmmeterAt(string at, double burdenOhms)
+    /// <summary>In series with the part and pin of "R3" (its first pin) or "Q1.base"; null for a pin that the part has lost to a fault: nothing flows there.</summary>
+    private Ammeter? AmmeterAt(string at, double burdenOhms)
     {
-        var (part, pin) = JointOf(at);
-        return new Ammeter(part, pin, burdenOhms);
-    }
-
-    /// <summary>Part and pin of "R3" (its first pin) or "Q1.base".</summary>
-    private (string Part, int Pin) JointOf(string at)
-    {
+        if (board.Find(at) is { } part) return new Ammeter(part.Designator, 0, burdenOhms);
         var dot = at.LastIndexOf('.');
-        if (dot > 0 && board.Find(at[..dot]) is { } owner && owner.Kind.Pins.IndexOf(at[(dot + 1)..]) is >= 0 and var pin) return (owner.Designator, pin);
-        return board.Find(at) is { } part ? (part.Designator, 0) : throw new ArgumentException($"the board has no part or pin \"{at}\"", nameof(at));
+        var owner = (dot > 0 ? board.Find(at[..dot]) : null) ?? throw new ArgumentException($"the board has no part or pin \"{at}\"", nameof(at));
+        return owner.Kind.Pins.IndexOf(at[(dot + 1)..]) is >= 0 and var pin ? new Ammeter(owner.Designator, pin, burdenOhms) : null;
     }
 }

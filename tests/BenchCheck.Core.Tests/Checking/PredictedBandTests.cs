@@ -36,9 +36,9 @@ public class PredictedBandTests
     public void Monte_Carlo_of_four_rectangular_inputs_is_that_of_JCGM_101_example_9_2_3()
     {
         // Four supplies in series, each 10 V ± √3 V.
-        var band = Bands(Stack(10, 10, 10, 10), BandMethod.MonteCarlo, 200_000)[^1];
-        Assert.Equal(40 - 3.88, band.Low, 0.03);
-        Assert.Equal(40 + 3.88, band.High, 0.03);
+        var band = Bands(Stack(10, 10, 10, 10), BandMethod.MonteCarlo, 60_000)[^1];
+        Assert.Equal(40 - 3.88, band.Low, 0.05);
+        Assert.Equal(40 + 3.88, band.High, 0.05);
     }
 
     /// <summary>9.2.2: four standard normal inputs give ±3.92, which is what first-order propagation takes for any.</summary>
@@ -55,9 +55,9 @@ public class PredictedBandTests
     public void Monte_Carlo_of_one_wide_input_is_that_of_JCGM_101_example_9_2_4()
     {
         var board = Stack(10, 10, 10, 100);
-        var (carlo, first) = (Bands(board, BandMethod.MonteCarlo, 200_000)[^1], Bands(board, BandMethod.FirstOrder)[^1]);
-        Assert.Equal(130 - 17.0, carlo.Low, 0.1);
-        Assert.Equal(130 + 17.0, carlo.High, 0.1);
+        var (carlo, first) = (Bands(board, BandMethod.MonteCarlo, 60_000)[^1], Bands(board, BandMethod.FirstOrder)[^1]);
+        Assert.Equal(130 - 17.0, carlo.Low, 0.15);
+        Assert.Equal(130 + 17.0, carlo.High, 0.15);
         Assert.Equal(19.9, first.High - 130, 0.05);
     }
 

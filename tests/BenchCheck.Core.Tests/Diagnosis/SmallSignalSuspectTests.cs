@@ -55,6 +55,22 @@ public class SmallSignalSuspectTests
     }
 
     [Fact]
+    public void Currents_read_at_pins_are_compared_under_every_fault_of_the_part()
+    {
+        var bench = Stage();
+        var plain = Readings(bench, bench.Board);
+        Reading[] currents =
+        [
+            new([], Condition.DefaultName, ReadingQuantity.Current, "Q1.emitter", null, -1.39e-3) { StatedUncertainty = 3e-5 },
+            new([], "signal", ReadingQuantity.CurrentGain, "Q1.collector", "Q1.base", 220), new([], "signal", ReadingQuantity.CurrentGain, "Q1.emitter", "Q1.base", 221),
+        ];
+        var result = Check(bench, plain with { Readings = [.. plain.Readings, .. currents] });
+        Assert.Equal(7 + 2, result.Readings.Length);
+        Assert.NotEqual(BoardVerdict.Disagrees, result.Verdict);
+        Assert.All(result.Readings, r => Assert.Equal(ReadingVerdict.In, r.Verdict));
+    }
+
+    [Fact]
     public void Next_reading_offers_the_gain_where_only_the_signal_can_tell()
     {
         var bench = Stage();

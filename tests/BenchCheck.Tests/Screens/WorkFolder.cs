@@ -11,7 +11,7 @@ internal sealed class WorkFolder : IDisposable
 
     public string Path { get; }
 
-    private static string Samples
+    public static string Samples
     {
         get
         {

@@ -37,7 +37,7 @@ internal static class OtherPartFaults
             var opposite = q.IsNChannel ? Mosfet.PChannel : Mosfet.NChannel;
             yield return new FaultHypothesis(
                 new FaultName(FaultKind.WrongType, $"{q.Designator} is of the other channel, {opposite.Name}") { Parts = [q.Designator] },
-                board.With([new Mosfet(opposite, q.Designator, q.Nodes, q.OnOhms, q.Threshold)], []));
+                board.With([new Mosfet(opposite, q.Designator, q.Nodes, q.OnOhms, q.Threshold) { Siemens = q.Siemens }], []));
         }
 
         foreach (var u in board.Parts.OfType<Regulator>())

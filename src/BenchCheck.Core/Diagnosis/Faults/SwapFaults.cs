@@ -30,8 +30,8 @@ internal static class SwapFaults
                 var (a, b) = (transistors[i], transistors[j]);
                 if (a.IsNpn == b.IsNpn) continue;
                 yield return Swap(
-                    board, a, b, new Transistor(b.Kind, a.Designator, a.Nodes, b.Gain, b.Drop, b.Saturation),
-                    new Transistor(a.Kind, b.Designator, b.Nodes, a.Gain, a.Drop, a.Saturation));
+                    board, a, b, new Transistor(b.Kind, a.Designator, a.Nodes, b.Gain, b.Drop, b.Saturation) { OutputOhms = b.OutputOhms },
+                    new Transistor(a.Kind, b.Designator, b.Nodes, a.Gain, a.Drop, a.Saturation) { OutputOhms = a.OutputOhms });
             }
         }
     }

@@ -19,8 +19,9 @@ internal static class TransistorFaults
                     Name(FaultKind.HighResistanceJoint, $"{q.JointName(pin)} joint of high resistance", q, pin), altered, free);
             }
 
+            // What is left of the transistor is its base-collector diode.
             yield return new FaultHypothesis(
-                Name(FaultKind.BaseEmitterOpen, $"{q.Designator} base-emitter open", q), BaseEmitterOpen(board, q));
+                Name(FaultKind.BaseEmitterOpen, $"{q.Designator} base-emitter open", q), Alteration.OpenPin(board, q, Transistor.Emitter));
             foreach (var (pin, other) in new[] { (Transistor.Collector, Transistor.Emitter), (Transistor.Base, Transistor.Emitter), (Transistor.Collector, Transistor.Base) })
             {
                 yield return new FaultHypothesis(
@@ -31,7 +32,7 @@ internal static class TransistorFaults
             var opposite = q.IsNpn ? Transistor.Pnp : Transistor.Npn;
             yield return new FaultHypothesis(
                 Name(FaultKind.WrongType, $"{q.Designator} is {Article(opposite)} {opposite.Name} type", q),
-                board.With([new Transistor(opposite, q.Designator, q.Nodes, q.Gain, q.Drop, q.Saturation)], []));
+                board.With([new Transistor(opposite, q.Designator, q.Nodes, q.Gain, q.Drop, q.Saturation) { OutputOhms = q.OutputOhms }], []));
 
             if (q.Gain.IsUnknown) continue;
             yield return FarOff(board, q, Nominal.Between(Math.Min(1, q.Gain.Low / 2), q.Gain.Low), "low");
@@ -42,13 +43,6 @@ internal static class TransistorFaults
     private static FaultHypothesis FarOff(Board board, Transistor q, Nominal gain, string side) => new(
         Name(FaultKind.GainFarOff, $"{q.Designator}'s gain far too {side}", q), board.With([q with { Gain = gain }], []),
         new FreeNumber(q.Designator, ParameterKind.Gain, q.Gain.Value));
-
-    /// <summary>What is left of the transistor is its base-collector diode.</summary>
-    private static Board BaseEmitterOpen(Board board, Transistor q)
-    {
-        var (anode, cathode) = q.IsNpn ? (Transistor.Base, Transistor.Collector) : (Transistor.Collector, Transistor.Base);
-        return board.With([new Diode(Diode.Plain, q.Designator, [q.Nodes[anode], q.Nodes[cathode]], q.Drop)], []);
-    }
 
     private static FaultName Name(string kind, string text, Transistor q, int pin = -1) =>
         new(kind, text) { Parts = [q.Designator], Pins = pin < 0 ? [] : [q.JointName(pin)] };
