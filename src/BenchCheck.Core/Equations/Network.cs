@@ -10,14 +10,24 @@ namespace BenchCheck.Core.Equations;
 ///   A(θ) x + C(θ) z = b(θ)        x: node voltages, then currents of voltage-defined branches
 ///   v = D x,  v ≤ law(z), z ≥ 0   one row of D and one column of C a port
 /// </code>
-/// A row of a node sums the currents that leave it. The reference node is no unknown; its index is −1. Nodes that no linear element ties
-/// to the reference get a leakage of 1e-11 S there, one per island, so that A is regular whatever the ports do; an island that no port reaches
-/// is tied firmly instead, since nothing flows through that tie.
+/// A row of a node sums the currents that leave it. The reference node is no unknown; its index is −1. So that A is regular and well scaled
+/// whatever the ports do, some of its elements are propped, and a straight-line port takes each prop away again: an island of nodes that only
+/// junctions or very high resistances join to the rest is tied to it by a conductance, all of which is taken away but a leakage; an amplifier has
+/// a gain below one, what it lacks of its own being added.
 /// </remarks>
 public sealed class Network
 {
-    internal const double LeakageSiemens = 1e-11;
-    internal const double TieSiemens = 1e-3;
+    internal const double LeakageSiemens = 1e-12;
+    internal const double TieSiemens = 1e-4;
+
+    /// <summary>Resistance above which a part ties nothing: an island that only such parts join gets a tie, too.</summary>
+    internal const double WeakOhms = 1e6;
+
+    /// <summary>Input over output of a propped amplifier.</summary>
+    internal const double PropInverseGain = 10;
+
+    /// <summary>Open-loop gain of an amplifier that states none: ideal to one part in ten million of its input.</summary>
+    internal const double IdealGain = 1e7;
 
     internal readonly record struct CompiledConductor(int From, int To, Coefficient Ohms, int Part);
 
@@ -50,10 +60,28 @@ public sealed class Network
 
         /// <summary>True for a branch that keeps its drop at any current, whatever the law of the junctions.</summary>
         public bool IsStraight => Ideality.IsConstantZero;
+
+        /// <summary>True when z drops a voltage of its own across the resistance in series; the constant-drop law of a junction leaves that out.</summary>
+        public bool HasSeries(PortLaw law) => law == PortLaw.Junction || IsStraight;
     }
 
     /// <summary>An impedance with its own branch current at Row; only in networks for small signals.</summary>
     internal readonly record struct CompiledReactance(int From, int To, int Row, Coefficient Value, Coefficient Ohms, bool IsCapacitance, int Part);
+
+    /// <summary>A conductance across an island's edge that is no part's.</summary>
+    /// <param name="Siemens">as stamped</param>
+    /// <param name="Leakage">what is left of it when its prop is taken away</param>
+    internal readonly record struct CompiledTie(int From, int To, double Siemens, double Leakage);
+
+    /// <summary>
+    /// A port that takes a prop away, v = Slope · z with z of either sign: across a tie (Row −1), or in the row of an amplifier's branch.
+    /// </summary>
+    internal readonly record struct CompiledProp(int High, int Low, int Row, double Slope)
+    {
+        public static CompiledProp Of(in CompiledTie tie) => new(tie.From, tie.To, -1, -1 / (tie.Siemens - tie.Leakage));
+
+        public static CompiledProp Of(in CompiledAmplifier amplifier) => new(amplifier.Output, -1, amplifier.Row, 1 / PropInverseGain);
+    }
 
     internal CompiledConductor[] Conductors = [];
     internal CompiledVoltage[] Voltages = [];
@@ -62,7 +90,8 @@ public sealed class Network
     internal CompiledPort[] Ports = [];
     internal CompiledReactance[] Reactances = [];
     internal Dictionary<(string Part, int Pin), int> JointRows = [];
-    internal (int Node, double Siemens)[] Leaks = [];
+    internal CompiledTie[] Ties = [];
+    internal CompiledProp[] Props = [];
     internal double ThermalVolts;
     internal Dictionary<string, int> NodeIndex = [];
     internal ImmutableArray<Part> Parts = [];
@@ -80,7 +109,8 @@ public sealed class Network
     /// <summary>How many of them are node voltages; they come first.</summary>
     public int NodeCount { get; internal set; }
 
-    public int PortCount => Ports.Length;
+    /// <summary>Number of ports: those of the devices, then those that take props away.</summary>
+    public int PortCount => Ports.Length + Props.Length;
 
     /// <summary>Row of x that holds the current into a part's pin, where an ammeter was inserted.</summary>
     /// <exception cref="KeyNotFoundException">no ammeter there</exception>

@@ -21,6 +21,9 @@ public sealed class NetworkCompiler
     private readonly List<Network.CompiledAmplifier> amplifiers = [];
     private readonly List<Network.CompiledPort> ports = [];
     private readonly List<Network.CompiledReactance> reactances = [];
+    private readonly List<Network.CompiledTie> ties = [];
+    private readonly List<Network.CompiledProp> props = [];
+    private readonly double[] nominal;
     private readonly Dictionary<(string Part, int Pin), int> jointRow = [];
     private readonly Dictionary<(string Part, int Pin), string> insertedNode = [];
     private int branchCount;
@@ -31,6 +34,7 @@ public sealed class NetworkCompiler
         this.board = board;
         this.table = table;
         this.condition = condition;
+        nominal = [.. table.Entries.Select(e => e.Nominal.Value)];
     }
 
     /// <param name="table">the parameter vector that coefficients refer to; made from the same board</param>
@@ -76,6 +80,7 @@ public sealed class NetworkCompiler
 
         for (var i = 0; i < board.Parts.Length; i++) AddPart(board.Parts[i], described[i], i, nodeCount);
 
+        TieIslands(nodeCount);
         return new Network(condition)
         {
             Conductors = [.. conductors],
@@ -84,7 +89,8 @@ public sealed class NetworkCompiler
             Amplifiers = [.. amplifiers],
             Ports = [.. ports],
             Reactances = [.. reactances],
-            Leaks = Islands(nodeCount),
+            Ties = [.. ties],
+            Props = [.. props],
             NodeIndex = nodeIndex,
             NodeCount = nodeCount,
             Size = nodeCount + branchCount,
@@ -150,6 +156,7 @@ public sealed class NetworkCompiler
         {
             drivenRow = nodeCount + branchCount++;
             amplifiers.Add(new(Pin(e.Plus), Pin(e.Minus), Pin(e.Output), drivenRow, Map(e.Offset), Map(e.Gain), partIndex));
+            props.Add(Network.CompiledProp.Of(amplifiers[^1]));
         }
 
         foreach (var e in elements.CurrentBranches)
@@ -190,8 +197,10 @@ public sealed class NetworkCompiler
         _ => throw new ArgumentOutOfRangeException(nameof(control)),
     };
 
-    /// <summary>One node of each group that no linear element ties to the reference, with the conductance that does.</summary>
-    private (int Node, double Siemens)[] Islands(int nodeCount)
+    private bool IsWeak(Coefficient ohms) => ohms.Value(nominal) > Network.WeakOhms;
+
+    /// <summary>Ties each group of nodes that no linear element joins to the reference, and props those ties that something else may join.</summary>
+    private void TieIslands(int nodeCount)
     {
         // Node −1, the reference, is kept at position 0.
         var root = new int[nodeCount + 1];
@@ -208,15 +217,23 @@ public sealed class NetworkCompiler
             if (ra < rb) root[rb] = ra;
             else root[ra] = rb;
         }
-        foreach (var c in conductors) Join(c.From, c.To);
+        void Tie(int from, int to, double leakage)
+        {
+            if (Find(from + 1) == Find(to + 1)) return;
+            Join(from, to);
+            ties.Add(new(from, to, Network.TieSiemens, leakage));
+            props.Add(Network.CompiledProp.Of(ties[^1]));
+        }
+        foreach (var c in conductors.Where(c => !IsWeak(c.Ohms))) Join(c.From, c.To);
         foreach (var v in voltages) Join(v.Plus, v.Minus);
         foreach (var a in amplifiers) Join(a.Output, -1);
-        // An island that no device reaches may be tied as firmly as is good for the arithmetic: nothing flows through the tie.
-        var reached = ports.SelectMany(p => new[] { p.High, p.Low, p.TransportFrom, p.TransportTo }).Select(node => Find(node + 1)).ToHashSet();
-        return
-        [
-            .. Enumerable.Range(1, nodeCount).Where(i => Find(i) == i)
-                .Select(i => (i - 1, reached.Contains(i) ? Network.LeakageSiemens : Network.TieSiemens)),
-        ];
+        foreach (var port in ports.Where(p => p.Row < 0)) Tie(port.High, port.Low, Network.LeakageSiemens);
+        foreach (var c in conductors) Tie(c.From, c.To, 0);
+        for (var i = 1; i <= nodeCount; i++)
+        {
+            if (Find(i) != i) continue;
+            if (Enumerable.Range(1, nodeCount).Any(other => other != i && Find(other) == i)) Tie(i - 1, -1, Network.LeakageSiemens);
+            else ties.Add(new(i - 1, -1, Network.LeakageSiemens, Network.LeakageSiemens));
+        }
     }
 }

@@ -82,7 +82,7 @@ internal sealed class FreshRefit(IReadOnlyList<Probe> probes)
         for (var k = 0; k < model.BoardParameterCount; k++) theta[model.Parameters[k].ThetaIndex] = model.Parameters[k].Value(phi[k]);
         var network = NetworkCompiler.Compile(model.Board, model.Table, model.Board.FindCondition(probe.Condition)!);
         var (high, low) = (network.IndexOf(probe.At), network.IndexOf(probe.Against!));
-        var (n, ports) = (network.Size, network.PortCount);
+        var (n, ports) = (network.Size, network.Ports.Length);
         var a = Matrix<double>.Build.Dense(n, n);
         var b = Vector<double>.Build.Dense(n);
         void Add(int row, int column, double value)
@@ -97,7 +97,7 @@ internal sealed class FreshRefit(IReadOnlyList<Probe> probes)
             Add(to, from, -siemens);
         }
 
-        foreach (var (node, siemens) in network.Leaks) Add(node, node, siemens);
+        foreach (var e in network.Ties) Conduct(e.From, e.To, e.Leakage);
         foreach (var e in network.Conductors) Conduct(e.From, e.To, 1 / e.Ohms.Value(theta));
         Conduct(high, low, 1 / probe.Meter.InputOhms);
         foreach (var e in network.Voltages)

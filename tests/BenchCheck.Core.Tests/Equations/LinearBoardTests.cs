@@ -54,21 +54,11 @@ public class LinearBoardTests
     [Fact]
     public void Heat_in_every_part_is_what_the_supplies_deliver()
     {
-        var (compared, unsolved) = (0, 0);
+        var compared = 0;
         for (var seed = 0; seed < 1000; seed++)
         {
             var board = RandomBoards.Passive(seed);
-            OperatingPoint point;
-            try
-            {
-                point = new SolvedBoard(board, JunctionLaw.Exponential).Point;
-            }
-            catch (NoOperatingStateException)
-            {
-                unsolved++;
-                continue;
-            }
-
+            var point = new SolvedBoard(board, JunctionLaw.Exponential).Point;
             var current = point.Currents().ToDictionary(c => c.At, c => c.Amperes);
             var heat = board.Parts.Sum(point.Watts);
             var delivered = board.Parts.OfType<Supply>().Sum(s => -(point.Volts(s.Nodes[0]) - point.Volts(s.Nodes[1])) * current[s.Designator]);
@@ -82,7 +72,6 @@ public class LinearBoardTests
         }
 
         Assert.True(compared > 400, $"only {compared} boards compared");
-        Assert.True(unsolved < 10, $"{unsolved} boards without an operating state");
     }
 
     /// <summary>Reciprocity of networks without sources (Desoer and Kuh, Basic Circuit Theory (1969), 16.4, from memory).</summary>

@@ -46,4 +46,58 @@ public class MeterLoadingTests
         var board = new BoardSketch().Current("I1", "A", "0", amperes).Resistor("R1", "A", "0", ohms).Board;
         Assert.Equal(shown, new SolvedBoard(board).Read("A", 150e3), shown * 1e-3);
     }
+
+    /// <summary>A meter is to the board what a resistor of its resistance, or a source of its test current, soldered in its place would be.</summary>
+    [Theory]
+    [InlineData(JunctionLaw.Exponential)]
+    [InlineData(JunctionLaw.ConstantDrop)]
+    public void A_meter_shows_what_its_own_resistor_soldered_in_would_have_across_it(JunctionLaw law) =>
+        Gen.Select(Gen.Int[0, 1_000_000], Gen.Int[0, 99], Gen.Int[0, 99], Gen.Double[4, 7]).Sample((seed, a, b, decade) =>
+        {
+            var board = RandomBoards.Passive(seed);
+            var (high, low) = (board.Nodes[a % board.Nodes.Length], board.Nodes[b % board.Nodes.Length]);
+            if (high == low) return;
+            var ohms = Math.Pow(10, decade);
+            var metered = new SolvedBoard(board, law).Read(high, ohms, low);
+            var soldered = new SolvedBoard(board.With([], [new Resistor("RM", [high, low], Nominal.Exactly(ohms))]), law);
+            // Devices that hold one another can stand in two states; the meter finds the one near the state without it.
+            if (Math.Abs(metered - soldered.Volts(high, low)) > 0.01 && CanLatch(board)) return;
+            AssertSame(seed, soldered.Volts(high, low), metered, soldered, ohms);
+        }, iter: 2000);
+
+    [Theory]
+    [InlineData(JunctionLaw.Exponential)]
+    [InlineData(JunctionLaw.ConstantDrop)]
+    public void An_ohmmeter_shows_what_a_source_of_its_test_current_would_make(JunctionLaw law) =>
+        Gen.Select(Gen.Int[0, 1_000_000], Gen.Int[0, 99], Gen.Int[0, 99], Gen.Double[-6, -3]).Sample((seed, a, b, decade) =>
+        {
+            var board = RandomBoards.Passive(seed);
+            var (high, low) = (board.Nodes[a % board.Nodes.Length], board.Nodes[b % board.Nodes.Length]);
+            if (high == low) return;
+            var amperes = Math.Pow(10, decade);
+            var metered = new SolvedBoard(board, law, Condition.Unpowered).Ohms(high, low, amperes) * amperes;
+            if (Math.Abs(metered) > 1e3) return; // open: the source would find no way
+            // Lifting the supplies off takes the source with it, so it is drawn as a controlled one that follows its own volt.
+            Part[] source =
+            [
+                new Resistor("R1V", ["V1V", board.Reference], Nominal.Exactly(1)),
+                new ControlledSource(ControlledSource.CurrentByVoltage, "IT", [high, low], Nominal.Exactly(amperes), new Control.NodePair("V1V", board.Reference)),
+                new Supply("VT", ["V1V", board.Reference], Nominal.Exactly(1)),
+            ];
+            var bare = board.With(board.Parts.OfType<Supply>().Select(s => new Resistor(s.Designator, s.Nodes, Nominal.Exactly(1e15))), source);
+            var driven = new SolvedBoard(bare, law);
+            if (Math.Abs(metered - driven.Volts(high, low)) > 0.01 && CanLatch(board)) return;
+            AssertSame(seed, driven.Volts(high, low), metered, driven, Math.Abs(metered) / amperes);
+        }, iter: 2000);
+
+    private static bool CanLatch(Board board) => board.Parts.OfType<Transistor>().Count() > 1;
+
+    private static void AssertSame(int seed, double expected, double shown, SolvedBoard solved, double ohms)
+    {
+        var greatest = solved.Point.Currents().Max(c => Math.Abs(c.Amperes));
+        // A floating island leaks some picoamperes through the meter, a floating base its gain times as many.
+        var gain = 1 + solved.Board.Parts.OfType<Transistor>().Select(q => q.Gain.Value).DefaultIfEmpty(0).Max();
+        var leaked = 4e-12 * gain * ohms * solved.Board.Nodes.Max(n => Math.Abs(solved.Volts(n)));
+        Assert.True(Math.Abs(expected - shown) <= 1e-6 * (1 + Math.Abs(expected)) + 1e-8 * greatest + leaked, $"seed {seed}: {expected} V soldered, {shown} V shown, {greatest} A");
+    }
 }

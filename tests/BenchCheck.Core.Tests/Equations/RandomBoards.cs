@@ -40,6 +40,17 @@ internal sealed class RandomBoards
         return draw.Finish();
     }
 
+    /// <summary>The same with MOSFETs and a three-terminal regulator, its common at the reference or not.</summary>
+    public static Board WithSwitches(int seed)
+    {
+        var draw = new RandomBoards(seed);
+        draw.Sources();
+        draw.Resistors();
+        draw.Semiconductors(1);
+        draw.Switches();
+        return draw.Finish();
+    }
+
     private string Node() => nodes[random.Next(nodes.Length)];
 
     private string OtherThan(string node)
@@ -102,6 +113,20 @@ internal sealed class RandomBoards
         }
     }
 
+    private void Switches()
+    {
+        for (var i = random.Next(1, 4); i > 0; i--)
+        {
+            var kind = Chance(0.5) ? Mosfet.NChannel : Mosfet.PChannel;
+            parts.Add(new Mosfet(kind, $"M{i}", [Node(), Node(), Node()], Nominal.Exactly(LogBetween(0.02, 20)), Nominal.Exactly(Between(0.8, 4))));
+        }
+
+        if (!Chance(0.6)) return;
+        var (input, output) = (Node(), Node());
+        parts.Add(new Regulator("U1", [input, output, Chance(0.7) ? "0" : Node()], Nominal.Exactly(Between(1.2, 12)), Nominal.Exactly(Between(0.2, 2)),
+            Nominal.Exactly(LogBetween(1e-5, 8e-3))));
+    }
+
     private void OpAmps()
     {
         for (var i = random.Next(1, 3); i > 0; i--)
@@ -117,9 +142,15 @@ internal sealed class RandomBoards
         }
     }
 
-    /// <summary>Opens a few joints: the pin moves to a node of its own.</summary>
+    /// <summary>Shorts a few nodes and opens a few joints: the pin moves to a node of its own.</summary>
     private Board Finish()
     {
+        if (Chance(0.15))
+        {
+            var from = Node();
+            parts.Add(new Resistor("RS", [from, OtherThan(from)], Nominal.Exactly(0.05)));
+        }
+
         for (var i = 0; i < parts.Count; i++)
         {
             if (!Chance(0.08) || parts[i] is OpAmp || parts[i].Designator.StartsWith("VP") || parts[i].Designator.StartsWith("VN")) continue;

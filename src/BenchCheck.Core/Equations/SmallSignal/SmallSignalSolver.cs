@@ -24,9 +24,6 @@ public sealed class SmallSignalSolver
     /// <summary>Without a frequency, inductors from here on are open to the signal and smaller ones their winding: common practice, no source.</summary>
     public const double OpenHenries = 1e-3;
 
-    /// <summary>Open-loop gain of an amplifier that states none.</summary>
-    private const double IdealGain = 1e7;
-
     private const double ShortOhms = 1e-6;
     private const double OpenOhms = 1e13;
 
@@ -69,7 +66,7 @@ public sealed class SmallSignalSolver
         ArgumentNullException.ThrowIfNull(net);
         network = net;
         angular = 2 * Math.PI * hertz;
-        ports = net.PortCount;
+        ports = net.Ports.Length;
         size = net.Size;
         unknowns = size + ports;
         var order = unknowns * (angular is null ? 1 : 2);
@@ -77,7 +74,7 @@ public sealed class SmallSignalSolver
         if (theta.Length != parameters.Length) theta = new double[parameters.Length];
         if (portCurrents.Length < ports) (portCurrents, totals) = (new double[ports], new double[ports]);
         parameters.CopyTo(theta);
-        currents.CopyTo(portCurrents);
+        currents[..ports].CopyTo(portCurrents);
         for (var k = 0; k < ports; k++) totals[k] = slopes.IsEmpty || net.Ports[k].IsStraight ? Math.Max(currents[k], 0) : slopes[k] >= LeakageOhms ? 0 : Thermal(net.Ports[k]) / slopes[k];
         matrix.AsSpan(0, order * order).Clear();
         Stamp();
@@ -175,7 +172,12 @@ public sealed class SmallSignalSolver
 
     private void Stamp()
     {
-        foreach (var (node, _) in network.Leaks) Add(node, node, TieSiemens);
+        foreach (ref readonly var e in network.Ties.AsSpan())
+        {
+            AddDifference(e.From, e.From, e.To, TieSiemens);
+            AddDifference(e.To, e.To, e.From, TieSiemens);
+        }
+
         foreach (ref readonly var e in network.Conductors.AsSpan())
         {
             var siemens = 1 / e.Ohms.Value(theta);
@@ -205,7 +207,7 @@ public sealed class SmallSignalSolver
         {
             Add(e.Output, e.Row, 1);
             AddDifference(e.Row, e.Plus, e.Minus, 1);
-            Add(e.Row, e.Output, -1 / (e.Gain.IsConstantZero ? IdealGain : e.Gain.Value(theta)));
+            Add(e.Row, e.Output, -1 / (e.Gain.IsConstantZero ? Network.IdealGain : e.Gain.Value(theta)));
         }
 
         foreach (ref readonly var e in network.Reactances.AsSpan())
