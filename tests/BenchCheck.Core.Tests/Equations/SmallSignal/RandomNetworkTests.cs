@@ -17,7 +17,7 @@ public class RandomNetworkTests
     [InlineData(true)]
     public void Readings_at_a_frequency_agree_with_independently_stamped_loop_equations(bool hasOpAmps)
     {
-        var skipped = 0;
+        var (skipped, compared) = (0, 0);
         for (var seed = 0; seed < Seeds; seed++)
         {
             var drawn = hasOpAmps ? LinearBoards.ReactiveWithOpAmps(seed) : LinearBoards.ReactiveWithControlledSources(seed);
@@ -37,6 +37,10 @@ public class RandomNetworkTests
                 continue;
             }
 
+            // Positive feedback drives an op-amp against its supply; there it passes no signal on.
+            var atRest = new SolvedBoard(drawn).Point;
+            if (drawn.Parts.OfType<OpAmp>().Any(u => atRest.State(u) != "linear")) continue;
+            compared++;
             var board = new SignalBoard(drawn, hertz: hertz, drive: drive);
             Same(seed, "voltage", Across(driving, seen), board.Volts(seen.High, seen.Low), Largest(driving));
             Same(seed, "input resistance", Across(into, seen), board.InputOhms(seen.High, seen.Low), Largest(into));
@@ -49,6 +53,7 @@ public class RandomNetworkTests
         }
 
         Assert.InRange(skipped, 0, Seeds / 20);
+        Assert.True(compared > Seeds / 4, $"only {compared} networks compared");
     }
 
     /// <summary>Without a frequency: large capacitors and small inductors are shorts, the others are open.</summary>
@@ -97,6 +102,8 @@ public class RandomNetworkTests
             var hertz = 10 * Math.Pow(1e4, random.NextDouble());
             var (driven, seen) = (TwoOf(random, drawn), TwoOf(random, drawn));
             var board = new SignalBoard(drawn, hertz: hertz, drive: new Drive(driven.High, driven.Low, 1, 100));
+            var atRest = new SolvedBoard(drawn).Point;
+            if (drawn.Parts.OfType<OpAmp>().Any(u => atRest.State(u) != "linear")) return;
             var gradient = new double[board.Theta.Length];
             var value = board.Read(ReadingQuantity.Voltage, seen.High, seen.Low, board.Theta, gradient);
             for (var i = 0; i < gradient.Length; i++)
