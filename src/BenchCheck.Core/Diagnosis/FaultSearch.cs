@@ -20,8 +20,8 @@ internal sealed class FaultSearch
     /// <summary>How far off the unexplained alternative lets a reading be, as a share of the largest reading of its kind.</summary>
     private const double UnexplainedShare = 0.3;
 
-    /// <summary>Logarithm of the odds against the likeliest fault up to which a fault's evidence is worth every digit.</summary>
-    private const double WorthPolishing = 20;
+    /// <summary>Logarithm of the odds against the likeliest fault up to which a fault's evidence is worth every digit; none less likely is shown.</summary>
+    private const double WorthPolishing = 12;
 
     /// <summary>Probability that a board with one fault has a second: common practice, no source.</summary>
     private const double PairShare = 0.1;

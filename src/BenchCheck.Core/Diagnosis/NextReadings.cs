@@ -56,18 +56,21 @@ internal sealed class NextReadings(Bench bench, ImmutableArray<Probe> taken, Evi
         var chosen = Enumerable.Range(0, kinds).Where(h => usable[h]).ToArray();
         var total = chosen.Sum(h => faults[h].Probability);
         double[] probability = [.. chosen.Select(h => faults[h].Probability / total)];
-        var ranked = new List<NextReading>();
+        var ranked = new List<(Probe Probe, double Bits, (Fault Fault, int Group, double Probability, double Value, double Sigma)[] Predictions)>();
         for (var c = 0; c < count; c++)
         {
             double[] m = [.. chosen.Select(h => mean[c, h])];
             double[] v = [.. chosen.Select(h => variance[c, h])];
             var bits = MixtureInformation.Bits(probability, m, v);
-            if (bits < LeastBits) continue;
-            ranked.Add(Describe(candidates[c], bits, [.. chosen.Select((h, i) => (faults[h].Fault, faults[h].Group, probability[i], m[i], Math.Sqrt(v[i])))]));
+            if (bits >= LeastBits) ranked.Add((candidates[c], bits, [.. chosen.Select((h, i) => (faults[h].Fault, faults[h].Group, probability[i], m[i], Math.Sqrt(v[i])))]));
         }
 
         // Among readings that tell about the same, one that needs no change of the set-up comes first.
-        return [.. ranked.OrderByDescending(r => Math.Round(r.Bits, 1)).ThenBy(r => r.Caution is null && r.Quantity == ReadingQuantity.Voltage ? 0 : 1).ThenByDescending(r => r.Bits).Take(MostReadings)];
+        return
+        [
+            .. ranked.OrderByDescending(r => Math.Round(r.Bits, 1)).ThenBy(r => r.Probe.Quantity == ReadingQuantity.Voltage && Caution(r.Probe, r.Predictions) is null ? 0 : 1)
+                .ThenByDescending(r => r.Bits).Take(MostReadings).Select(r => Describe(r.Probe, r.Bits, r.Predictions)),
+        ];
     }
 
     private static Probe[] Candidates(Bench bench, ImmutableArray<Probe> taken)
@@ -155,13 +158,18 @@ internal sealed class NextReadings(Bench bench, ImmutableArray<Probe> taken, Evi
         var place = probe.Words(bench.Board.Reference);
         var isOhms = probe.Quantity == ReadingQuantity.Resistance;
         var condition = isOhms || probe.IsSmallSignal || bench.Board.Conditions.Count(c => !c.SuppliesRemoved && !c.IsSmallSignal) > 1 ? $" ({probe.Condition})" : "";
-        var caution = isOhms
-            ? "Supplies off and removed, capacitors discharged first."
-            : probe.Quantity == ReadingQuantity.Voltage && predictions.Any(x => Cautions.IsHazardous(x.Value)) ? $"Hazardous voltage: above {Cautions.HazardousVoltsDc} V may stand here." : null;
         return new NextReading(
-            probe.Condition, probe.Quantity, probe.At, probe.Against, bits, [.. leaders.Select(x => new Expectation(x.Group, x.Value, x.Sigma))], caution,
+            probe.Condition, probe.Quantity, probe.At, probe.Against, bits, [.. leaders.Select(x => new Expectation(x.Group, x.Value, x.Sigma))],
+            Caution(probe, predictions),
             $"{place}{condition} {string.Join("; ", shown)}");
     }
+
+    private static string? Caution(Probe probe, (Fault Fault, int Group, double Probability, double Value, double Sigma)[] predictions) => probe.Quantity switch
+    {
+        ReadingQuantity.Resistance => "Supplies off and removed, capacitors discharged first.",
+        ReadingQuantity.Voltage when predictions.Any(x => Cautions.IsHazardous(x.Value)) => $"Hazardous voltage: above {Cautions.HazardousVoltsDc} V may stand here.",
+        _ => null,
+    };
 
     private static string Shown(Probe probe, double value)
     {
