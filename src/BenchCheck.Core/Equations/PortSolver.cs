@@ -8,7 +8,8 @@ namespace BenchCheck.Core.Equations;
 /// <para>
 /// Ports with a smooth law (junction law) are solved by Newton's method. Each tangent is laid at a point of the curve that keeps the new
 /// current when it grows and the new voltage when it falls, so a junction can leave any state and no exponential overflows. Where that does not come to
-/// rest it starts again from the state that the board would take if every junction conducted along one and the same tangent, or not at all.
+/// rest it starts again from the state that the board would take if every junction conducted along one and the same tangent, or not at all, and at last
+/// from where every junction has a resistance of its own, which then falls to nothing.
 /// </para>
 /// <para>
 /// Ports with a corner (constant drop, output limit) form with these tangents a linear complementarity problem: w = drop − v ≥ 0, z ≥ 0, z w = 0.
@@ -19,7 +20,12 @@ namespace BenchCheck.Core.Equations;
 /// </remarks>
 internal sealed class PortSolver
 {
-    private const int NewtonSteps = 60;
+    private const int NewtonSteps = 80;
+
+    /// <summary>Steps that go the whole way whatever comes of them, and the least share of it that later ones go.</summary>
+    private const int FreeSteps = 16;
+    private const double LeastShare = 1.0 / 16;
+
     private const double VoltTolerance = 1e-10;
 
     /// <summary>Volts that a current is out of step by, in the stead of a voltage that hardly hangs on it.</summary>
@@ -40,12 +46,19 @@ internal sealed class PortSolver
     /// <summary>Factorisations after which a search is given up.</summary>
     private const int MostFactorings = 20_000;
 
+    /// <summary>Where <see cref="Ease"/> begins and ends, and how far one step goes.</summary>
+    private const double MostSeriesOhms = 1e9;
+    private const double LeastSeriesOhms = 1e-4;
+    private const double SeriesFall = 0.4;
+
     private readonly LinearComplementarity complementarity = new();
     private readonly PortTangent tangent = new();
     private double[] intercept = [];
     private double[] curveVolts = [];
     private double[] target = [];
     private double[] unstable = [];
+    private double[] easedView = [];
+    private double[] below = [];
     private double[] matrix = [];
     private double[] offset = [];
     private double[] slope = [];
@@ -175,7 +188,26 @@ internal sealed class PortSolver
             if (SolveTangents(open, view, drops, PairState.Either, z) && Comes(open, view, curves, drops, z)) return true;
         }
 
-        return false;
+        return Ease(open, view, curves, drops, z);
+    }
+
+    /// <summary>
+    /// Gives every port so much resistance in series that it stands alone, and follows the state as that falls to nothing: a path along which junctions that
+    /// drive one another turn on one by one.
+    /// </summary>
+    private bool Ease(ReadOnlySpan<double> open, ReadOnlySpan<double> view, ReadOnlySpan<JunctionCurve> curves, ReadOnlySpan<double> drops, Span<double> z)
+    {
+        z.Clear();
+        var eased = easedView.AsSpan(0, ports * ports);
+        view[..(ports * ports)].CopyTo(eased);
+        for (var ohms = MostSeriesOhms; ohms > LeastSeriesOhms && complementarity.FactoringsLeft > 0; ohms *= SeriesFall)
+        {
+            for (var k = 0; k < ports; k++) eased[k * ports + k] = view[k * ports + k] + (laws[k] == PortLaw.Junction ? ohms : 0);
+            z.CopyTo(below);
+            if (!Newton(open, eased, curves, drops, z)) below.AsSpan(0, ports).CopyTo(z);
+        }
+
+        return Comes(open, view, curves, drops, z);
     }
 
     private bool Comes(ReadOnlySpan<double> open, ReadOnlySpan<double> view, ReadOnlySpan<JunctionCurve> curves, ReadOnlySpan<double> drops, Span<double> z)
@@ -240,6 +272,7 @@ internal sealed class PortSolver
             if (laws[k] == PortLaw.Junction) curveVolts[k] = curves[k].Volts(z[k]);
         }
 
+        var (share, before) = (1.0, 0.0);
         for (var step = 0; step < NewtonSteps; step++)
         {
             for (var k = 0; k < ports; k++)
@@ -248,9 +281,16 @@ internal sealed class PortSolver
             }
 
             if (!SolveTangents(open, view, drops, PairState.Held, next)) return false;
-            var worst = Step(curves, next, z);
+            var worst = Step(curves, next, z, share);
             if (double.IsNaN(worst)) return false;
-            if (worst > VoltTolerance) continue;
+            if (worst > VoltTolerance)
+            {
+                // Where whole steps go round in a circle, shorter ones come to the middle of it.
+                if (step >= FreeSteps) share = worst < before ? Math.Min(1, 2 * share) : Math.Max(LeastShare, share / 2);
+                before = worst;
+                continue;
+            }
+
             next.CopyTo(z);
             Rest(curves, z);
             return true;
@@ -260,8 +300,9 @@ internal sealed class PortSolver
     }
 
     /// <summary>Moves the points at which the tangents are laid.</summary>
+    /// <param name="share">of the whole way, in volts</param>
     /// <returns>how far, in volts, the state on the tangents misses a curve at worst; NaN when it is beyond all numbers</returns>
-    private double Step(ReadOnlySpan<JunctionCurve> curves, ReadOnlySpan<double> next, Span<double> z)
+    private double Step(ReadOnlySpan<JunctionCurve> curves, ReadOnlySpan<double> next, Span<double> z, double share)
     {
         var worst = 0.0;
         for (var k = 0; k < ports; k++)
@@ -276,7 +317,13 @@ internal sealed class PortSolver
             if (!double.IsFinite(volts)) return double.NaN;
             var onCurve = curves[k].Volts(next[k]);
             var miss = Math.Abs(volts - onCurve);
-            if (next[k] > z[k])
+            if (share < 1)
+            {
+                worst = Math.Max(worst, Math.Min(miss, Math.Abs(curves[k].Amperes(volts) - next[k]) * OhmsOfMiss));
+                curveVolts[k] += share * ((next[k] > z[k] ? onCurve : volts) - curveVolts[k]);
+                z[k] = curves[k].Amperes(curveVolts[k]);
+            }
+            else if (next[k] > z[k])
             {
                 worst = Math.Max(worst, miss);
                 (z[k], curveVolts[k]) = (next[k], onCurve);
@@ -337,6 +384,8 @@ internal sealed class PortSolver
         curveVolts = new double[ports];
         target = new double[ports];
         unstable = new double[ports];
+        easedView = new double[ports * ports];
+        below = new double[ports];
         laws = new PortLaw[ports];
         pairs = new PairState[ports];
         rows = new int[ports];

@@ -1,7 +1,6 @@
 using BenchCheck.Core.Boards;
 using BenchCheck.Core.Equations;
 using BenchCheck.Core.Quantities;
-using CsCheck;
 using Xunit;
 
 namespace BenchCheck.Core.Tests.Equations;
@@ -12,6 +11,8 @@ namespace BenchCheck.Core.Tests.Equations;
 /// </summary>
 public class MeterLoadingTests
 {
+    private const int Seeds = 800;
+
     private static double Divider(double supply, double upper, double lower, double meter) =>
         new SolvedBoard(new BoardSketch().Supply("V1", "P", supply).Resistor("R1", "P", "M", upper).Resistor("R2", "M", "0", lower).Board).Read("M", meter);
 
@@ -51,32 +52,35 @@ public class MeterLoadingTests
     [Theory]
     [InlineData(JunctionLaw.Exponential)]
     [InlineData(JunctionLaw.ConstantDrop)]
-    public void A_meter_shows_what_its_own_resistor_soldered_in_would_have_across_it(JunctionLaw law) =>
-        Gen.Select(Gen.Int[0, 1_000_000], Gen.Int[0, 99], Gen.Int[0, 99], Gen.Double[4, 7]).Sample((seed, a, b, decade) =>
+    public void A_meter_shows_what_its_own_resistor_soldered_in_would_have_across_it(JunctionLaw law)
+    {
+        for (var seed = 0; seed < Seeds; seed++)
         {
-            var board = RandomBoards.Passive(seed);
-            var (high, low) = (board.Nodes[a % board.Nodes.Length], board.Nodes[b % board.Nodes.Length]);
-            if (high == low) return;
+            var (board, random) = (RandomBoards.Passive(seed), new Random(seed));
+            var (high, low, decade) = (Node(board, random), Node(board, random), 4 + 3 * random.NextDouble());
+            if (high == low) continue;
             var ohms = Math.Pow(10, decade);
             var metered = new SolvedBoard(board, law).Read(high, ohms, low);
             var soldered = new SolvedBoard(board.With([], [new Resistor("RM", [high, low], Nominal.Exactly(ohms))]), law);
             // Devices that hold one another can stand in two states; the meter finds the one near the state without it.
-            if (Math.Abs(metered - soldered.Volts(high, low)) > 0.01 && CanLatch(board)) return;
+            if (Math.Abs(metered - soldered.Volts(high, low)) > 0.01 && CanLatch(board)) continue;
             AssertSame(seed, soldered.Volts(high, low), metered, soldered, ohms);
-        }, iter: 300);
+        }
+    }
 
     [Theory]
     [InlineData(JunctionLaw.Exponential)]
     [InlineData(JunctionLaw.ConstantDrop)]
-    public void An_ohmmeter_shows_what_a_source_of_its_test_current_would_make(JunctionLaw law) =>
-        Gen.Select(Gen.Int[0, 1_000_000], Gen.Int[0, 99], Gen.Int[0, 99], Gen.Double[-6, -3]).Sample((seed, a, b, decade) =>
+    public void An_ohmmeter_shows_what_a_source_of_its_test_current_would_make(JunctionLaw law)
+    {
+        for (var seed = 0; seed < Seeds; seed++)
         {
-            var board = RandomBoards.Passive(seed);
-            var (high, low) = (board.Nodes[a % board.Nodes.Length], board.Nodes[b % board.Nodes.Length]);
-            if (high == low) return;
+            var (board, random) = (RandomBoards.Passive(seed), new Random(seed));
+            var (high, low, decade) = (Node(board, random), Node(board, random), -6 + 3 * random.NextDouble());
+            if (high == low) continue;
             var amperes = Math.Pow(10, decade);
             var metered = new SolvedBoard(board, law, Condition.Unpowered).Ohms(high, low, amperes) * amperes;
-            if (Math.Abs(metered) > 1e3) return; // open: the source would find no way
+            if (Math.Abs(metered) > 1e3) continue; // open: the source would find no way
             // Lifting the supplies off takes the source with it, so it is drawn as a controlled one that follows its own volt.
             Part[] source =
             [
@@ -86,9 +90,12 @@ public class MeterLoadingTests
             ];
             var bare = board.With(board.Parts.OfType<Supply>().Select(s => new Resistor(s.Designator, s.Nodes, Nominal.Exactly(1e15))), source);
             var driven = new SolvedBoard(bare, law);
-            if (Math.Abs(metered - driven.Volts(high, low)) > 0.01 && CanLatch(board)) return;
+            if (Math.Abs(metered - driven.Volts(high, low)) > 0.01 && CanLatch(board)) continue;
             AssertSame(seed, driven.Volts(high, low), metered, driven, Math.Abs(metered) / amperes);
-        }, iter: 300);
+        }
+    }
+
+    private static string Node(Board board, Random random) => board.Nodes[random.Next(board.Nodes.Length)];
 
     private static bool CanLatch(Board board) => board.Parts.OfType<Transistor>().Count() > 1;
 
