@@ -23,7 +23,7 @@ public static class BoardStructure
         return
         [
             .. UntouchedReference(board), .. PartsOnOneNode(board), .. SupplyLoops(board), .. UntiedNodes(board), .. SinglePins(board),
-            .. OpAmpsWithoutFeedback(board), .. ShortedGenerators(board),
+            .. ControlStructure.Problems(board), .. FeedbackStructure.Problems(board), .. ShortedGenerators(board),
         ];
     }
 
@@ -119,7 +119,12 @@ public static class BoardStructure
         return path;
     }
 
-    private static ILookup<string, Part> PartsByNode(IEnumerable<Part> parts) =>
+    /// <summary>A source of current whose voltage something else must fix; one that follows the voltage at its own pins fixes that itself.</summary>
+    private static bool GivesCurrent(Part part, string reference) =>
+        part is CurrentSource || (part is ControlledSource c && !IsFixedVoltage(part)
+            && !(c.Control is Control.NodePair pair && part.Nodes.Any(n => n != reference && (n == pair.Plus || n == pair.Minus))));
+
+    internal static ILookup<string, Part> PartsByNode(IEnumerable<Part> parts) =>
         parts.SelectMany(p => p.Nodes.Distinct(StringComparer.Ordinal).Select(n => (Node: n, Part: p))).ToLookup(x => x.Node, x => x.Part, StringComparer.Ordinal);
 
     /// <summary>Groups of nodes without a path to the reference: at all, at DC, or but for current sources.</summary>
@@ -134,7 +139,7 @@ public static class BoardStructure
             // The inputs of an op-amp and a gate draw no current, so they tie their nodes to nothing.
             var carrying = part is OpAmp ? part.Nodes.RemoveRange(0, 2) : part is Mosfet ? part.Nodes.RemoveAt(Mosfet.Gate) : part.Nodes;
             direct.TieAll(carrying);
-            if (part is not CurrentSource) stiff.TieAll(carrying);
+            if (!GivesCurrent(part, board.Reference)) stiff.TieAll(carrying);
         }
 
         var reference = board.Reference;
@@ -152,7 +157,7 @@ public static class BoardStructure
 
         foreach (var (nodes, parts) in Untied(board, stiff, reference).Where(g => direct.AreTied(g.Nodes[0], reference)))
         {
-            var sources = parts.Where(p => p is CurrentSource && p.Nodes.Any(n => !nodes.Contains(n))).Select(p => p.Designator).ToList();
+            var sources = parts.Where(p => GivesCurrent(p, reference) && p.Nodes.Any(n => !nodes.Contains(n))).Select(p => p.Designator).ToList();
             yield return new StructureProblem(sources[0], nodes[0],
                 $"only current sources ({string.Join(", ", sources)}) connect {Names("node", nodes)} with the rest of the board: their currents have no way back", true);
         }
@@ -170,26 +175,4 @@ public static class BoardStructure
     }
 
     private static string Names(string word, List<string> names) => names.Count == 1 ? $"{word} {names[0]}" : $"{word}s {string.Join(", ", names)}";
-
-    private static IEnumerable<StructureProblem> OpAmpsWithoutFeedback(Board board)
-    {
-        var rails = new NodeGroups(board.Nodes);
-        foreach (var supply in board.Parts.OfType<Supply>()) rails.TieAll(supply.Nodes);
-        var touching = PartsByNode(board.Parts);
-        foreach (var amplifier in board.Parts.OfType<OpAmp>())
-        {
-            var (plus, minus, output) = (amplifier.Nodes[0], amplifier.Nodes[1], amplifier.Nodes[2]);
-            var reached = new HashSet<string>(StringComparer.Ordinal) { output };
-            var queue = new Queue<string>(reached);
-            while (queue.TryDequeue(out var node))
-            {
-                // A signal ends at a rail, and does not come back out of the amplifier itself.
-                if (rails.AreTied(node, board.Reference)) continue;
-                foreach (var next in touching[node].Where(p => !ReferenceEquals(p, amplifier)).SelectMany(p => p.Nodes).Where(reached.Add)) queue.Enqueue(next);
-            }
-
-            if (!reached.Contains(minus) && !reached.Contains(plus))
-                yield return new StructureProblem(amplifier.Designator, output, $"{amplifier.Designator} has no feedback from its output to an input: it works as a comparator", false);
-        }
-    }
 }

@@ -93,4 +93,49 @@ public class BoardStructureTests
         IsWarning(Only(With("VCC")), "U1", "U1 has no feedback from its output to an input");
         Assert.Empty(BoardStructure.Problems(With("OUT2").Board));
     }
+
+    [Fact]
+    public void An_op_amp_with_feedback_to_its_plus_input_only_is_told_to_hold_either_of_two_states()
+    {
+        var latch = Divider.Resistor("R3", "AMP", "P", 1000).Resistor("R4", "P", "0", 1000)
+            .Add(new OpAmp("U1", ["P", "OUT", "AMP", "VCC", "0"], null, OpAmp.UsualOffset, 1.5));
+        IsWarning(Only(latch), "U1", "either of two states");
+    }
+
+    [Fact]
+    public void An_op_amp_with_both_inputs_on_one_node_is_a_warning()
+    {
+        var board = Divider.Resistor("R3", "AMP", "0", 1000).Add(new OpAmp("U1", ["OUT", "OUT", "AMP", "VCC", "0"], null, OpAmp.UsualOffset, 1.5));
+        IsWarning(Only(board), "U1", "both inputs of U1 are on node OUT");
+    }
+
+    private static ControlledSource Controlled(PartKind kind, string name, string plus, string minus, Control control) =>
+        new(kind, name, [plus, minus], Nominal.Exactly(2), control);
+
+    [Fact]
+    public void Sources_that_control_themselves_or_each_other_are_errors()
+    {
+        IsError(Only(Divider.Resistor("R3", "X", "OUT", 100).Add(Controlled(ControlledSource.VoltageByVoltage, "E1", "X", "0", new Control.NodePair("X", "0")))),
+            "E1", "the voltage between its own pins");
+        IsError(Only(Divider.Add(Controlled(ControlledSource.CurrentByCurrent, "F1", "OUT", "0", new Control.PartCurrent("F1")))), "F1", "its own current");
+        IsError(
+            Only(Divider.Add(Controlled(ControlledSource.CurrentByCurrent, "F1", "OUT", "0", new Control.PartCurrent("F2")))
+                .Add(Controlled(ControlledSource.CurrentByCurrent, "F2", "OUT", "0", new Control.PartCurrent("F1")))),
+            "F1", "F1 and F2 are controlled by each other's current");
+    }
+
+    [Fact]
+    public void A_node_between_controlled_current_sources_is_an_error_unless_one_follows_the_voltage_there()
+    {
+        BoardSketch Node(Control control) => Divider.Add(Controlled(ControlledSource.CurrentByCurrent, "F1", "A", "0", new Control.PartCurrent("R1")))
+            .Add(Controlled(ControlledSource.CurrentByVoltage, "G1", "0", "A", control));
+        IsError(Only(Node(new Control.NodePair("OUT", "0"))), "F1", "only current sources (F1, G1) connect node A");
+        Assert.Empty(BoardStructure.Problems(Node(new Control.NodePair("A", "0")).Board));
+    }
+
+    [Fact]
+    public void A_control_that_carries_no_direct_current_is_a_warning() =>
+        IsWarning(
+            Only(Divider.Add(new Capacitor("C1", ["OUT", "0"], Nominal.Exactly(1e-6))).Add(Controlled(ControlledSource.CurrentByCurrent, "F1", "OUT", "0", new Control.PartCurrent("C1")))),
+            "F1", "which carries none at DC");
 }
