@@ -154,7 +154,7 @@ public sealed class BoardTextTests
     private static string ExampleOf(PartKey key) => key.Name switch
     {
         "state" => "open",
-        "control" when key.Example.Contains("nodes", StringComparison.Ordinal) => "VCC, OUT",
+        "control" when key.Example.Contains("nodes", StringComparison.Ordinal) => "OUT, GND",
         "control" => "R1",
         _ => key.Example.Split(',')[0],
     };
