@@ -36,6 +36,25 @@ public class LinearBoardTests
         Assert.InRange(skipped, 0, Seeds / 50);
     }
 
+    /// <summary>Thévenin, C. R. Acad. Sci. 97 (1883): v R / (R + R_th), with controlled sources too.</summary>
+    [Fact]
+    public void A_load_meets_the_open_voltage_behind_the_resistance_looking_in()
+    {
+        for (var seed = 0; seed < 500; seed++)
+        {
+            var (board, random) = (LinearBoards.WithControlledSources(seed), new Random(seed));
+            var (node, ohms) = (board.Nodes[random.Next(1, board.Nodes.Length)], Math.Pow(10, 1 + 5 * random.NextDouble()));
+            var open = new SolvedBoard(board);
+            var (volts, thevenin) = (open.Volts(node), open.Point.TheveninOhms(node));
+
+            // A negative resistance near that of the load would make any error large.
+            if (Math.Abs(ohms + thevenin) < 0.1 * ohms) continue;
+            var loaded = new SolvedBoard(board.With([], [new Resistor("RL", [node, "0"], Nominal.Exactly(ohms))])).Volts(node);
+            var size = 1 + board.Nodes.Max(n => Math.Abs(open.Volts(n)));
+            Assert.True(Math.Abs(volts * ohms / (ohms + thevenin) - loaded) <= 1e-7 * size, $"seed {seed}, {node}: {loaded} V, {volts} V behind {thevenin} Ω");
+        }
+    }
+
     /// <summary>Tellegen, Philips Res. Rep. 7 (1952): voltages of one board times currents of another with the same connections sum to zero.</summary>
     [Fact]
     public void Voltages_of_one_board_and_currents_of_another_with_the_same_connections_are_orthogonal() =>
